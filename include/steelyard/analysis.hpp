@@ -1,0 +1,61 @@
+// Room "analysis": joins everything that a reader may see into one value.
+#pragma once
+
+#include <optional>
+#include <span>
+#include <string>
+#include <string_view>
+#include <utility>
+#include <vector>
+
+#include "steelyard/audit.hpp"
+#include "steelyard/base.hpp"
+#include "steelyard/pool.hpp"
+#include "steelyard/read.hpp"
+#include "steelyard/rebuild.hpp"
+
+namespace steelyard {
+
+/// The input of an analysis: what it takes to get the same answer again.
+struct Input {
+  std::string file;
+  std::string sha256;  ///< of the bytes as read, 64 hexadecimal digits
+  Table table;
+};
+
+/// What the caller asked for.
+struct AnalysisOptions {
+  Priors priors;
+  bool explicit_priors = false;      ///< both priors were stated by the user
+  PoolOptions pool;
+  RebuildOptions rebuild;
+  std::vector<std::string> without;  ///< labels (or "row N") of studies to leave out
+};
+
+/// A finished analysis of `pool` (and of `draw`, `report`, which show the same).
+struct Analysis {
+  Input input;
+  AnalysisOptions options;
+  std::vector<Study> studies;
+  std::vector<Finding> findings;
+  std::vector<std::string> left_out;  ///< labels named by `without`
+  PoolResult result;
+  std::vector<Diagnostic> cautions;   ///< of reading, rebuilding and pooling together
+};
+
+/// Reads, rebuilds, audits and pools the text of a file.
+[[nodiscard]] Outcome<Analysis> analyse_pool(std::string_view text, const std::string& file,
+                                             const AnalysisOptions& options = {});
+
+/// SHA-256 of bytes, in hexadecimal.
+[[nodiscard]] std::string sha256(std::string_view bytes);
+
+/// The two plain sentences that answer "is there an effect?" and "does it vary?", with the odds the
+/// right way round and the prior odds they assume. Order: effect, heterogeneity.
+struct Verdict {
+  std::string effect;
+  std::string heterogeneity;
+};
+[[nodiscard]] Verdict verdict(const PoolResult& result, const Priors& priors, std::span<const Study> studies);
+
+}  // namespace steelyard

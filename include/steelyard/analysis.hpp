@@ -58,4 +58,18 @@ struct Verdict {
 };
 [[nodiscard]] Verdict verdict(const PoolResult& result, const Priors& priors, std::span<const Study> studies);
 
+// ---- evidence in words; all in UTF-8 with U+2212 as minus and superscript exponents -----------------
+
+/// Weight of evidence (Good 1950): 10·log10 of a Bayes factor given as natural log.
+[[nodiscard]] double decibans(double log_bf);
+/// "+15.3", "−4.0", "0.0"; whole numbers from 1,000 on.
+[[nodiscard]] std::string decibans_text(double log_bf);
+/// exp(log_ratio) to three figures: "0.0123", "34.2", "12,300"; outside [0.001, 1e6) as a power of ten,
+/// "3.10×10¹²". Any finite log.
+[[nodiscard]] std::string ratio_text(double log_ratio);
+/// The odds the right way round: "34.2 to 1" for, "1 to 34.2" against; whole numbers without decimals.
+[[nodiscard]] std::string odds_text(double log_odds);
+/// "an effect", or "a positive effect" / "a negative effect" when the prior allows one direction only.
+[[nodiscard]] std::string effect_phrase(Direction direction);
+
 }  // namespace steelyard

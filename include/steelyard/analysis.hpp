@@ -1,6 +1,7 @@
 // Room "analysis": joins everything that a reader may see into one value.
 #pragma once
 
+#include <cstddef>
 #include <optional>
 #include <span>
 #include <string>
@@ -46,6 +47,39 @@ struct Analysis {
 /// Reads, rebuilds, audits and pools the text of a file.
 [[nodiscard]] Outcome<Analysis> analyse_pool(std::string_view text, const std::string& file,
                                              const AnalysisOptions& options = {});
+
+/// The same for rows that are read already (a result that is repeated, a table made in memory).
+[[nodiscard]] Outcome<Analysis> analyse_table(Input input, const AnalysisOptions& options = {});
+
+/// What `check` looks at.
+struct CheckOptions {
+  RebuildOptions rebuild;
+  std::vector<std::string> without;  ///< labels (or "row N") of studies to leave out
+};
+
+/// A file as `check` saw it: what could be rebuilt, what could not, and what doesn't agree.
+struct Check {
+  Input input;
+  CheckOptions options;
+  std::vector<Study> studies;         ///< the rows that could be rebuilt
+  std::vector<Diagnostic> problems;   ///< errors: why the other rows could not
+  std::vector<Finding> findings;
+  std::vector<std::string> left_out;  ///< labels named by `without`
+  std::vector<Diagnostic> cautions;   ///< of reading and rebuilding
+};
+
+/// Reads, rebuilds and audits the text of a file. A row that can't be rebuilt doesn't stop the others;
+/// the value is absent only when the file can't be read as rows at all.
+[[nodiscard]] Outcome<Check> analyse_check(std::string_view text, const std::string& file,
+                                           const CheckOptions& options = {});
+
+/// The label of a row: its `study` cell, or "row N" (N counts from 1).
+[[nodiscard]] std::string row_label(const Table& table, std::size_t row);
+
+/// The rows that stay, as indices, when these labels (or "row N") are left out. Error when a name
+/// matches no row or no row stays.
+[[nodiscard]] Outcome<std::vector<std::size_t>> rows_without(const Table& table,
+                                                             std::span<const std::string> without);
 
 /// SHA-256 of bytes, in hexadecimal.
 [[nodiscard]] std::string sha256(std::string_view bytes);

@@ -1,0 +1,52 @@
+// The list of documents, and what follows from their descriptions.
+#include "render/json/documents.hpp"
+
+#include <array>
+#include <string>
+
+#include <fmt/format.h>
+
+namespace steelyard {
+
+namespace {
+
+struct Described {
+  JsonDocument document;
+  const json::Shape& (*shape)();
+};
+
+constexpr std::array described = {
+    Described{{"pool", "Result of steelyard pool"}, json::pool_shape},
+    Described{{"check", "Result of steelyard check"}, json::check_shape},
+};
+
+const Described* find(std::string_view name) {
+  for (const Described& one : described) {
+    if (one.document.name == name) return &one;
+  }
+  return nullptr;
+}
+
+constexpr auto documents = [] {
+  std::array<JsonDocument, described.size()> list{};
+  for (std::size_t i = 0; i < list.size(); ++i) list[i] = described[i].document;
+  return list;
+}();
+
+}  // namespace
+
+std::span<const JsonDocument> json_documents() { return documents; }
+
+std::string json_schema(std::string_view document) {
+  const Described* one = find(document);
+  if (one == nullptr) return "";
+  return json::schema(one->shape(), one->document.title,
+                      fmt::format("steelyard/{}-{}.schema.json", document, json_schema_version));
+}
+
+std::string json_fields(std::string_view document) {
+  const Described* one = find(document);
+  return one == nullptr ? "" : json::fields_table(one->shape());
+}
+
+}  // namespace steelyard

@@ -1,6 +1,7 @@
 // Room "rebuild": rows into studies, one file per route.
 #pragma once
 
+#include <optional>
 #include <span>
 #include <string_view>
 #include <vector>
@@ -13,6 +14,9 @@ namespace steelyard {
 
 struct RebuildOptions {
   double alpha = 0.05;  ///< what `ns` means where no `alpha` cell says otherwise; 0 < alpha < 1
+  /// Correlation of paired scores for the paired rows that print none: states it for all of them, so
+  /// that they come onto the scale of two-group rows. −1 < r < 1.
+  std::optional<double> r_pair;
 };
 
 /// One way from cells to evidence. The registry lists them in the order in which they are tried:

@@ -47,7 +47,7 @@ constexpr Column table[] = {
     {"ci_high", number, "upper limit of a confidence interval", "", ""},
     {"ci_level", number, "level of every confidence interval of the row; 0.95 when absent", "probability", ""},
     {"ci_of", choice, "what ci_low and ci_high enclose, when more than one of these is printed", "",
-     "mean_diff|d|g|r|odds_ratio|estimate"},
+     "mean_diff|mean|d|g|r|odds_ratio|correlation|estimate"},
     // tests
     {"t", number, "t statistic", "", ""},
     {"df", number, "degrees of freedom of t, or of the denominator of F", "", ""},
@@ -88,6 +88,7 @@ constexpr Column table[] = {
     {"events1", count, "people in group 1 to whom it happened", "people", ""},
     {"events2", count, "people in group 2 to whom it happened", "people", ""},
     {"odds_ratio", number, "odds in group 1 over odds in group 2", "ratio", ""},
+    {"correlation", number, "Pearson's correlation of two measures, as an effect", "", ""},
     // further groups
     {"compare", text, "which groups are set against each other: 1-3, or 1+2-3 to merge groups first", "", ""},
     {"n3", count, "size of group 3", "people", ""},

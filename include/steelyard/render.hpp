@@ -22,6 +22,9 @@ struct TextStyle {
 /// The forest alone.
 [[nodiscard]] std::string render_text(const figure::Forest& forest, const TextStyle& style = {});
 
+/// `check` for people: how each row is read, and what does not agree. Ends with a newline.
+[[nodiscard]] std::string render_text(const Check& check, const TextStyle& style = {});
+
 /// `pool` for machines; the fields are described in docs/json.md.
 [[nodiscard]] std::string render_json(const Analysis& analysis);
 

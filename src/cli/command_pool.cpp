@@ -1,0 +1,52 @@
+// steelyard pool: all studies together.
+#include <array>
+
+#include "messages.hpp"
+#include "progress.hpp"
+#include "run.hpp"
+#include "steelyard/figure.hpp"
+#include "steelyard/json.hpp"
+#include "steelyard/render.hpp"
+#include "terminal.hpp"
+
+namespace steelyard::cli {
+
+namespace {
+
+Outcome<Analysis> analyse(const Options& options) {
+  auto text = input_text(options);
+  if (!text) return {};
+  const Progress progress("Pooling the studies");
+  return analyse_pool(*text, options.file, options.analysis);
+}
+
+}  // namespace
+
+Exit run_pool(const Options& options) {
+  const std::array names = {options.svg, options.json};
+  Outputs outputs(names, options.file);
+  if (!outputs.ok()) return Exit::file_trouble;
+
+  const Outcome<Analysis> outcome = analyse(options);
+  if (!outcome.ok()) {
+    say(outcome.diagnostics);
+    return outcome.diagnostics.empty() ? Exit::file_trouble : Exit::unusable_data;
+  }
+  const Analysis& analysis = *outcome.value;
+  if (outputs.at(0).wanted()) outputs.at(0).write(render_svg(figure::forest(analysis)));
+  if (outputs.at(1).wanted()) {
+    write_json(analysis, [&](std::string_view bytes) { outputs.at(1).write(bytes); });
+  }
+  if (!outputs.commit()) return Exit::file_trouble;
+  if (!outputs.takes_standard_output()) {
+    const Exit printed = print(render_text(analysis, text_style(options)));
+    if (printed != Exit::done) return printed;
+  }
+  if (!analysis.result.accurate) {
+    say_error("The promised accuracy was not reached; the results say by how much it may be missed.");
+    return Exit::not_satisfied;
+  }
+  return fails_on(options, analysis.findings) ? Exit::not_satisfied : Exit::done;
+}
+
+}  // namespace steelyard::cli

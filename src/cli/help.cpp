@@ -1,0 +1,109 @@
+#include "help.hpp"
+
+#include <fmt/format.h>
+#include <array>
+
+#include "options.hpp"
+
+namespace steelyard::cli {
+
+namespace {
+
+constexpr std::array meanings = {
+    ExitMeaning{Exit::done, "done"},
+    ExitMeaning{Exit::unusable_data, "the data can't be used; the messages say where and what to do"},
+    ExitMeaning{Exit::wrong_usage, "the command line is wrong"},
+    ExitMeaning{Exit::file_trouble, "a file can't be read or written"},
+    ExitMeaning{Exit::not_satisfied, "computed, but the accuracy was not reached or --fail-on was hit"},
+};
+
+constexpr std::string_view about =
+    "Steelyard weighs the evidence that papers print. It reads what publications report (a t value, group "
+    "sizes, means "
+    "and SDs, a confidence interval, a p value) and says how strongly it speaks, taken together, for an "
+    "effect, for no "
+    "effect, or for an effect that varies from study to study.";
+
+constexpr std::string_view file_meaning =
+    "Table of studies, one row a study, as CSV or JSON; - reads standard input. docs/formats.md describes "
+    "the columns.";
+
+std::string option_help(const OptionInfo& option, std::size_t width) {
+  std::string text = fmt::format("  {}{}{}\n", option.name, option.value.empty() ? "" : " ", option.value);
+  std::string meaning(option.meaning);
+  if (!option.choices.empty()) {
+    meaning += " One of ";
+    const auto words = words_of(option.choices);
+    for (std::size_t i = 0; i < words.size(); ++i) {
+      if (i > 0) meaning += i + 1 == words.size() ? " or " : ", ";
+      meaning += words[i];
+    }
+    meaning += '.';
+  }
+  if (!option.fallback.empty()) meaning += fmt::format(" Default: {}.", option.fallback);
+  return text + wrapped(meaning, 6, width);
+}
+
+std::string exit_help(std::size_t width) {
+  std::string text = "Exit status:\n";
+  for (const ExitMeaning& one : meanings) {
+    text += wrapped(fmt::format("{}  {}", static_cast<int>(one.exit), one.meaning), 2, width);
+  }
+  return text;
+}
+
+}  // namespace
+
+std::span<const ExitMeaning> exit_meanings() { return meanings; }
+
+std::string wrapped(std::string_view text, std::size_t indent, std::size_t width) {
+  const std::size_t room = width > indent + 20 ? width - indent : 20;
+  std::string out;
+  while (!text.empty()) {
+    std::size_t end = text.size();
+    if (end > room) {
+      end = text.rfind(' ', room);
+      if (end == std::string_view::npos || end == 0) end = text.find(' ', room);
+      if (end == std::string_view::npos) end = text.size();
+    }
+    out.append(indent, ' ');
+    out += text.substr(0, end);
+    out += '\n';
+    text.remove_prefix(end);
+    while (!text.empty() && text.front() == ' ') text.remove_prefix(1);
+  }
+  return out;
+}
+
+std::string general_help(std::size_t width) {
+  std::string text = wrapped(about, 0, width) + "\nUsage: steelyard COMMAND [FILE] [OPTIONS]\n\nCommands:\n";
+  for (const CommandInfo& command : command_table()) {
+    text += wrapped(fmt::format("{:<10}{}", command.name, command.summary), 2, width);
+  }
+  text += "\nOptions:\n";
+  text += wrapped("--help     this text, or with a command the command's own", 2, width);
+  text += wrapped("--version  the version", 2, width);
+  text += "\nExamples:\n";
+  for (const CommandInfo& command : command_table()) {
+    text += fmt::format("  {}\n", command.examples.front().line);
+    text += wrapped(command.examples.front().purpose, 6, width);
+  }
+  return text + '\n' + exit_help(width) +
+         wrapped("\nResults go to standard output, everything else to standard error.", 0, width);
+}
+
+std::string command_help(const CommandInfo& command, std::size_t width) {
+  std::string text = fmt::format("steelyard {}: {}\n\nUsage: steelyard {} [FILE] [OPTIONS]\n\n", command.name,
+                                 command.summary, command.name);
+  text += wrapped(command.description, 0, width);
+  text += "\n  FILE\n" + wrapped(file_meaning, 6, width) + "\nOptions:\n";
+  for (const OptionInfo* option : options_of(command.id)) text += option_help(*option, width);
+  text += "  --help\n      This text.\n\nExamples:\n";
+  for (const Example& example : command.examples) {
+    text += fmt::format("  {}\n", example.line);
+    text += wrapped(example.purpose, 6, width);
+  }
+  return text + '\n' + exit_help(width);
+}
+
+}  // namespace steelyard::cli

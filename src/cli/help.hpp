@@ -1,0 +1,27 @@
+// Help for people, from the tables of commands and options.
+#pragma once
+
+#include <cstddef>
+#include <string>
+#include <string_view>
+
+#include "commands.hpp"
+
+namespace steelyard::cli {
+
+/// `steelyard --help`.
+[[nodiscard]] std::string general_help(std::size_t width);
+/// `steelyard COMMAND --help`.
+[[nodiscard]] std::string command_help(const CommandInfo& command, std::size_t width);
+
+/// What the exit status means, for help and man pages.
+struct ExitMeaning {
+  Exit exit;
+  std::string_view meaning;
+};
+[[nodiscard]] std::span<const ExitMeaning> exit_meanings();
+
+/// Text in lines of at most `width` columns, each behind `indent` blanks; ends with a newline.
+[[nodiscard]] std::string wrapped(std::string_view text, std::size_t indent, std::size_t width);
+
+}  // namespace steelyard::cli

@@ -22,10 +22,23 @@ struct Cell {
   [[nodiscard]] bool empty() const { return text.empty(); }
 };
 
-/// One row; `cells` are parallel to `Table::names`.
+/// A cell of a known column that doesn't stand in that column.
+struct NamedCell {
+  std::string name;
+  Cell cell;
+};
+
+/// One row; `cells` are parallel to `Table::names`. `words` is what its `as_printed` cell says, taken
+/// apart, whether or not the row's own cells say the same.
 struct Row {
   std::size_t line = 0;
   std::vector<Cell> cells;
+  std::vector<NamedCell> words;
+};
+
+/// How numbers are written in a file.
+struct NumberStyle {
+  bool decimal_comma = false;  ///< `1,5` is one and a half
 };
 
 /// A file's rows. `names` are the column names in file order: known ones as in `columns()`, the
@@ -34,21 +47,23 @@ struct Table {
   std::string file;
   std::vector<std::string> names;
   std::vector<Row> rows;
+  NumberStyle style;
 
   /// Index of a column, or -1.
   [[nodiscard]] int index_of(std::string_view name) const;
-  /// The cell, or null when the column is absent or the cell empty.
+  /// The row's own cell or, when the column is absent or the cell empty, what the row's `as_printed`
+  /// words say; null when neither says anything.
   [[nodiscard]] const Cell* cell(const Row& row, std::string_view name) const;
-};
-
-/// How numbers are written in a file.
-struct NumberStyle {
-  bool decimal_comma = false;  ///< `1,5` is one and a half
+  /// The same without the words: null when the column is absent or the cell empty.
+  [[nodiscard]] const Cell* own_cell(const Row& row, std::string_view name) const;
+  /// What the words alone say, or null.
+  [[nodiscard]] static const Cell* word_cell(const Row& row, std::string_view name);
 };
 
 /// Reads one printed number. Grammar and examples: docs/formats.md.
 /// Errors quote the text and show accepted forms.
-[[nodiscard]] Outcome<Printed> parse_printed(std::string_view text, const NumberStyle& style, const Place& where);
+[[nodiscard]] Outcome<Printed> parse_printed(std::string_view text, const NumberStyle& style,
+                                             const Place& where);
 
 /// Reads a whole file's text: CSV (RFC 4180, with `,` `;` or tab, found from the header) or JSON (when the
 /// first character that isn't blank is `[` or `{`). All problems of the file are reported at once.
@@ -59,11 +74,8 @@ struct NumberStyle {
 [[nodiscard]] Outcome<Table> read_json(std::string_view text, const std::string& file);
 
 /// Takes a line as a paper prints it, `t(28) = 2.20, p = .036`, apart into cells of known columns
-/// (`t`, `df`, `p`, ...), each with its place inside the line.
-struct NamedCell {
-  std::string name;
-  Cell cell;
-};
+/// (`t`, `df`, `p`, ...), each with its place in the file; `where` is the place of the line's first
+/// character. Words that are not understood are a caution that quotes them.
 [[nodiscard]] Outcome<std::vector<NamedCell>> read_as_printed(std::string_view text, const NumberStyle& style,
                                                               const Place& where);
 

@@ -27,7 +27,7 @@ struct Input {
 /// What the caller asked for.
 struct AnalysisOptions {
   Priors priors;
-  bool explicit_priors = false;      ///< both priors were stated by the user
+  bool explicit_priors = false;  ///< both priors were stated by the user
   PoolOptions pool;
   RebuildOptions rebuild;
   std::vector<std::string> without;  ///< labels (or "row N") of studies to leave out
@@ -41,7 +41,7 @@ struct Analysis {
   std::vector<Finding> findings;
   std::vector<std::string> left_out;  ///< labels named by `without`
   PoolResult result;
-  std::vector<Diagnostic> cautions;   ///< of reading, rebuilding and pooling together
+  std::vector<Diagnostic> cautions;  ///< of reading, rebuilding and pooling together
 };
 
 /// Reads, rebuilds, audits and pools the text of a file.
@@ -61,8 +61,8 @@ struct CheckOptions {
 struct Check {
   Input input;
   CheckOptions options;
-  std::vector<Study> studies;         ///< the rows that could be rebuilt
-  std::vector<Diagnostic> problems;   ///< errors: why the other rows could not
+  std::vector<Study> studies;        ///< the rows that could be rebuilt
+  std::vector<Diagnostic> problems;  ///< errors: why the other rows could not
   std::vector<Finding> findings;
   std::vector<std::string> left_out;  ///< labels named by `without`
   std::vector<Diagnostic> cautions;   ///< of reading and rebuilding

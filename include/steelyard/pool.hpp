@@ -28,9 +28,9 @@ struct Priors {
 };
 
 struct PoolOptions {
-  double level = 0.95;          ///< of the central credible intervals, 0 < level < 1
-  bool summaries = true;        ///< false: marginal likelihoods and evidence only
-  bool shrunken = true;         ///< the studies' own effects
+  double level = 0.95;                ///< of the central credible intervals, 0 < level < 1
+  bool summaries = true;              ///< false: marginal likelihoods and evidence only
+  bool shrunken = true;               ///< the studies' own effects
   std::size_t shrunken_limit = 2000;  ///< beyond that many studies shrunken effects are null, with a caution
 };
 
@@ -72,9 +72,9 @@ struct Summary {
 class Posterior;
 
 struct StudyResult {
-  double log_bf = 0.0;       ///< this study alone: effect prior (cut to the direction) against no effect
+  double log_bf = 0.0;  ///< this study alone: effect prior (cut to the direction) against no effect
   double log_bf_error = 0.0;
-  Summary shrunken;          ///< the study's own effect, averaged over the two effect models
+  Summary shrunken;  ///< the study's own effect, averaged over the two effect models
 };
 
 struct PoolResult {
@@ -91,7 +91,8 @@ struct PoolResult {
 };
 
 /// Pools. Pure: same input, same bytes. Error (absent value) when the studies are empty, metrics are
-/// mixed, priors are unusable, options out of range, or the metric isn't `smd` and `priors_are_explicit` is false.
+/// mixed, priors are unusable, options out of range, or the metric isn't `smd` and `priors_are_explicit` is
+/// false.
 [[nodiscard]] Outcome<PoolResult> pool(std::span<const Study> studies, const Priors& priors,
                                        const PoolOptions& options = {});
 

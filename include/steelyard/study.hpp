@@ -88,17 +88,17 @@ struct AlternativeRoute {
 
 /// One rebuilt study.
 struct Study {
-  std::string label;      ///< the `study` cell, or "row N"
-  std::size_t row = 0;    ///< index into Table::rows
-  std::size_t line = 0;   ///< line in the file, from 1
-  std::string route;      ///< id of the route, for instance "t-and-n"
-  std::string how;        ///< one sentence: how the evidence was rebuilt from which cells
+  std::string label;     ///< the `study` cell, or "row N"
+  std::size_t row = 0;   ///< index into Table::rows
+  std::size_t line = 0;  ///< line in the file, from 1
+  std::string route;     ///< id of the route, for instance "t-and-n"
+  std::string how;       ///< one sentence: how the evidence was rebuilt from which cells
   Design design = Design::two_groups;
   std::string metric = "smd";
   Evidence evidence;
   EffectSize effect;
   std::optional<double> year;
-  std::string role;       ///< "", "original" or "replication"
+  std::string role;              ///< "", "original" or "replication"
   std::optional<double> raw_sd;  ///< the SD in raw units that turns d into a raw difference
   /// What the same cells say at the corners of their rounding bands: the evidence of the smallest
   /// and the largest effect that rounding allows; absent when nothing is rounded.

@@ -57,11 +57,12 @@ class TableBuilder {
 
   // `keep_line`: the cells say where they stood in the file that they first came from.
   bool cells(Row& row, bool keep_line) {
-    return json_.object([&](const std::string& key, const Place& where) {
+    if (!widen(row, last_width_)) return false;
+    const bool whole = json_.object([&](const std::string& key, const Place& where) {
       const int index = column(key, where);
       if (index < 0) return false;
       const auto i = static_cast<std::size_t>(index);
-      if (i >= row.cells.size() && !widen(row, i + 1)) return false;
+      if (!widen(row, i + 1)) return false;
       Cell& cell = row.cells[i];
       if (cell.line != 0) {
         problems_.error("duplicate-column", where,
@@ -73,9 +74,12 @@ class TableBuilder {
       cell.column = keep_line ? 0 : narrow(at.column);
       return value(cell, key, at);
     });
+    last_width_ = row.cells.size();
+    return whole;
   }
 
   bool widen(Row& row, std::size_t width) {
+    if (width <= row.cells.size()) return true;
     cells_ += width - row.cells.size();
     if (cells_ > most_cells_) {
       problems_.error(
@@ -189,6 +193,7 @@ class TableBuilder {
   std::map<std::string, int, std::less<>> index_;
   std::vector<Place> places_;
   std::size_t cells_ = 0;
+  std::size_t last_width_ = 0;  // of the row before: most objects have the same names
   std::size_t most_cells_;
   bool found_rows_ = false;
 };

@@ -26,16 +26,16 @@ std::vector<Diagnostic> Problems::take() {
   std::stable_sort(list.begin(), list.end(), [](const Diagnostic& a, const Diagnostic& b) {
     return std::tie(a.where.line, a.where.column) < std::tie(b.where.line, b.where.column);
   });
-  if (cut && !list.empty()) {
-    const std::size_t more = all - list.size();
-    list.push_back({list.front().severity,
-                    "more-problems",
-                    {list.front().where.file, 0, 0},
-                    fmt::format("There {} {} more problem{} like these in this file.",
-                                more == 1 ? "is" : "are", with_commas(more), more == 1 ? "" : "s"),
-                    "Mend the ones above first."});
-    list.back().severity = errors_ > 0 ? Severity::error : Severity::caution;
-  }
+  if (!cut) return list;
+  const std::size_t more = all - list.size();
+  Diagnostic last;
+  last.severity = errors_ > 0 ? Severity::error : Severity::caution;
+  last.code = "more-problems";
+  last.where.file = list.front().where.file;
+  last.what = fmt::format("There {} {} more problem{} like these in this file.", more == 1 ? "is" : "are",
+                          with_commas(more), more == 1 ? "" : "s");
+  last.remedy = "Mend the ones above first.";
+  list.push_back(std::move(last));
   return list;
 }
 

@@ -29,19 +29,8 @@ constexpr std::string_view file_meaning =
     "the columns.";
 
 std::string option_help(const OptionInfo& option, std::size_t width) {
-  std::string text = fmt::format("  {}{}{}\n", option.name, option.value.empty() ? "" : " ", option.value);
-  std::string meaning(option.meaning);
-  if (!option.choices.empty()) {
-    meaning += " One of ";
-    const auto words = words_of(option.choices);
-    for (std::size_t i = 0; i < words.size(); ++i) {
-      if (i > 0) meaning += i + 1 == words.size() ? " or " : ", ";
-      meaning += words[i];
-    }
-    meaning += '.';
-  }
-  if (!option.fallback.empty()) meaning += fmt::format(" Default: {}.", option.fallback);
-  return text + wrapped(meaning, 6, width);
+  return fmt::format("  {}{}{}\n", option.name, option.value.empty() ? "" : " ", option.value) +
+         wrapped(option_meaning(option), 6, width);
 }
 
 std::string exit_help(std::size_t width) {
@@ -53,6 +42,21 @@ std::string exit_help(std::size_t width) {
 }
 
 }  // namespace
+
+std::string_view about_text() { return about; }
+std::string_view file_text() { return file_meaning; }
+
+std::string option_meaning(const OptionInfo& option, bool with_default) {
+  std::string meaning(option.meaning);
+  const auto words = words_of(option.choices);
+  for (std::size_t i = 0; i < words.size(); ++i) {
+    meaning += i == 0 ? " One of " : i + 1 == words.size() ? " or " : ", ";
+    meaning += words[i];
+  }
+  if (!words.empty()) meaning += '.';
+  if (with_default && !option.fallback.empty()) meaning += fmt::format(" Default: {}.", option.fallback);
+  return meaning;
+}
 
 std::span<const ExitMeaning> exit_meanings() { return meanings; }
 

@@ -2,6 +2,7 @@
 #pragma once
 
 #include <cstddef>
+#include <span>
 #include <string>
 #include <string_view>
 
@@ -20,6 +21,15 @@ struct ExitMeaning {
   std::string_view meaning;
 };
 [[nodiscard]] std::span<const ExitMeaning> exit_meanings();
+
+/// What the program is for, a paragraph.
+[[nodiscard]] std::string_view about_text();
+/// What FILE stands for.
+[[nodiscard]] std::string_view file_text();
+
+struct OptionInfo;
+/// Meaning, choices and (if wanted) default of an option, in sentences.
+[[nodiscard]] std::string option_meaning(const OptionInfo& option, bool with_default = true);
 
 /// Text in lines of at most `width` columns, each behind `indent` blanks; ends with a newline.
 [[nodiscard]] std::string wrapped(std::string_view text, std::size_t indent, std::size_t width);

@@ -12,10 +12,11 @@ namespace {
 
 struct Described {
   JsonDocument document;
-  const json::Shape& (*shape)();
+  const json::Shape& (*shape)();  ///< null: the input, which the table of columns describes
 };
 
 constexpr std::array described = {
+    Described{{"studies", "A file of studies, as input"}, nullptr},
     Described{{"pool", "Result of steelyard pool"}, json::pool_shape},
     Described{{"check", "Result of steelyard check"}, json::check_shape},
 };
@@ -40,13 +41,15 @@ std::span<const JsonDocument> json_documents() { return documents; }
 std::string json_schema(std::string_view document) {
   const Described* one = find(document);
   if (one == nullptr) return "";
-  return json::schema(one->shape(), one->document.title,
-                      fmt::format("steelyard/{}-{}.schema.json", document, json_schema_version));
+  const std::string id = fmt::format("steelyard/{}-{}.schema.json", document, json_schema_version);
+  return one->shape == nullptr ? json::studies_schema(one->document.title, id)
+                               : json::schema(one->shape(), one->document.title, id);
 }
 
 std::string json_fields(std::string_view document) {
   const Described* one = find(document);
-  return one == nullptr ? "" : json::fields_table(one->shape());
+  if (one == nullptr) return "";
+  return one->shape == nullptr ? json::studies_fields() : json::fields_table(one->shape());
 }
 
 }  // namespace steelyard

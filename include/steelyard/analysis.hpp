@@ -51,6 +51,15 @@ struct Analysis {
 /// The same for rows that are read already (a result that is repeated, a table made in memory).
 [[nodiscard]] Outcome<Analysis> analyse_table(Input input, const AnalysisOptions& options = {});
 
+/// A run of `pool` as its JSON result records it: enough to repeat it.
+struct RecordedRun {
+  Input input;  ///< file name and checksum are those of the original file
+  AnalysisOptions options;
+};
+
+/// Reads the JSON that `pool` wrote. Error when it is something else, or of a newer kind.
+[[nodiscard]] Outcome<RecordedRun> read_result(std::string_view text, const std::string& file);
+
 /// What `check` looks at.
 struct CheckOptions {
   RebuildOptions rebuild;

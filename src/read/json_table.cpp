@@ -35,6 +35,8 @@ class TableBuilder {
     return std::move(table_);
   }
   [[nodiscard]] const std::vector<Place>& places() const { return places_; }
+  /// True when a result document says that its numbers have points, so that nothing need be guessed.
+  [[nodiscard]] bool has_points() const { return has_points_; }
 
  private:
   bool rows() {
@@ -167,10 +169,19 @@ class TableBuilder {
 
   bool input() {
     return json_.object([&](const std::string& key, const Place&) {
+      if (key == "decimal_comma") return decimal_comma();
       if (key != "rows" || json_.peek() != '[') return json_.skip_value(2);
       found_rows_ = true;
       return json_.array([&] { return json_.peek() == '{' ? result_row() : not_a_row("an object"); });
     });
+  }
+
+  // How the numbers of the original file were written.
+  bool decimal_comma() {
+    std::string_view word;
+    if (!json_.scalar(word)) return false;
+    has_points_ = word == "false";
+    return true;
   }
 
   // {"line": 3, "cells": {"t": "2.10", ...}}
@@ -196,6 +207,7 @@ class TableBuilder {
   std::size_t last_width_ = 0;  // of the row before: most objects have the same names
   std::size_t most_cells_;
   bool found_rows_ = false;
+  bool has_points_ = false;
 };
 
 }  // namespace
@@ -219,7 +231,7 @@ Outcome<Table> read_json(std::string_view text, const std::string& file) {
                    "Write an object for each study into the array.");
   }
   if (!table.rows.empty()) check_names(table.names, places, problems);
-  read_cells(table, false, problems);
+  read_cells(table, builder.has_points(), problems);
   return finish(std::move(table), problems);
 }
 

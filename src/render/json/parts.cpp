@@ -58,6 +58,8 @@ Part<Input> input_part() {
   return object<Input>(
       "input", {{"file", "as named on the command line; \"-\" is standard input", text<Input>(&Input::file)},
                 {"sha256", "checksum of the bytes as read", text<Input>(&Input::sha256)},
+                {"decimal_comma", "true when the file writes one and a half as 1,5",
+                 boolean<Input>([](const Input& input) { return input.table.style.decimal_comma; })},
                 {"rows", "all rows of the file, those left out included",
                  array<Input>(row_part(), [](const Input& input) { return RowRange(input.table); })}});
 }

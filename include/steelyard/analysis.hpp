@@ -49,7 +49,9 @@ struct Analysis {
                                              const AnalysisOptions& options = {});
 
 /// The same for rows that are read already (a result that is repeated, a table made in memory).
-[[nodiscard]] Outcome<Analysis> analyse_table(Input input, const AnalysisOptions& options = {});
+/// `cautions`: what reading had to say.
+[[nodiscard]] Outcome<Analysis> analyse_table(Input input, const AnalysisOptions& options = {},
+                                              std::vector<Diagnostic> cautions = {});
 
 /// A run of `pool` as its JSON result records it: enough to repeat it.
 struct RecordedRun {

@@ -31,7 +31,8 @@ std::optional<Diagnostic> priors_needed(const std::vector<Study>& studies, const
 
 }  // namespace
 
-Outcome<Analysis> analyse_table(Input input, const AnalysisOptions& options) {
+Outcome<Analysis> analyse_table(Input input, const AnalysisOptions& options,
+                                std::vector<Diagnostic> cautions) {
   Outcome<Analysis> outcome;
   auto fail = [&outcome](std::vector<Diagnostic>&& diagnostics) {
     for (Diagnostic& d : diagnostics) outcome.diagnostics.push_back(std::move(d));
@@ -41,6 +42,7 @@ Outcome<Analysis> analyse_table(Input input, const AnalysisOptions& options) {
   Analysis analysis;
   analysis.options = options;
   analysis.input = std::move(input);
+  analysis.cautions = std::move(cautions);
   const Table& table = analysis.input.table;
 
   auto kept = analysis::keep_rows(table, options.without);
@@ -89,11 +91,8 @@ Outcome<Analysis> analyse_pool(std::string_view text, const std::string& file,
                                const AnalysisOptions& options) {
   auto table = read_table(text, file);
   if (!table.ok()) return {std::nullopt, std::move(table.diagnostics)};
-  auto outcome = analyse_table(Input{file, sha256(text), std::move(*table.value)}, options);
-  // Cautions of reading come first: they stand first in the file's story.
-  outcome.diagnostics.insert(outcome.diagnostics.begin(), table.diagnostics.begin(), table.diagnostics.end());
-  if (outcome.ok()) outcome.value->cautions = outcome.diagnostics;
-  return outcome;
+  return analyse_table(Input{file, sha256(text), std::move(*table.value)}, options,
+                       std::move(table.diagnostics));
 }
 
 }  // namespace steelyard

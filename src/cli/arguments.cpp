@@ -91,6 +91,7 @@ void apply(const Bound& bound, Request& request) {
     return;
   }
   for (const std::string& value : values) {
+    request.options.given.emplace_back(&info, value);
     const std::string wrong = info.apply(request.options, value);
     if (!wrong.empty()) request.problems.push_back(fmt::format("{}: {}", info.name, wrong));
   }

@@ -13,11 +13,32 @@ namespace steelyard::cli {
 
 namespace {
 
+// The rows and options of this run: from a file of studies, or from the result of an earlier run.
+Outcome<RecordedRun> gather(const std::string& text, Options options) {
+  if (!options.from_result) {
+    auto table = read_table(text, options.file);
+    if (!table.ok()) return {std::nullopt, std::move(table.diagnostics)};
+    Input input{options.file, sha256(text), std::move(*table.value)};
+    return {RecordedRun{std::move(input), options.analysis}, std::move(table.diagnostics)};
+  }
+  auto run = read_result(text, options.file);
+  if (!run.ok()) return run;
+  for (const std::string& problem : build_on(run.value->options, options)) {
+    run.diagnostics.push_back({Severity::error, "options", {}, problem, ""});
+    run.value.reset();
+  }
+  if (run.ok()) run.value->options = options.analysis;
+  return run;
+}
+
 Outcome<Analysis> analyse(const Options& options) {
-  auto text = input_text(options);
-  if (!text) return {};
+  auto run = [&]() -> Outcome<RecordedRun> {
+    const auto text = input_text(options);
+    return text ? gather(*text, options) : Outcome<RecordedRun>{};
+  }();  // the text itself is not needed any longer
+  if (!run.ok()) return {std::nullopt, std::move(run.diagnostics)};
   const Progress progress("Pooling the studies");
-  return analyse_pool(*text, options.file, options.analysis);
+  return analyse_table(std::move(run.value->input), run.value->options, std::move(run.diagnostics));
 }
 
 }  // namespace

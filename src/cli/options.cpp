@@ -279,4 +279,13 @@ std::vector<std::string> settle(Options& o) {
   return problems;
 }
 
+std::vector<std::string> build_on(const AnalysisOptions& recorded, Options& o) {
+  o.analysis = recorded;
+  if (!o.direction) o.direction = recorded.priors.effect.direction;
+  for (const auto& [option, value] : o.given) {
+    if (option->apply != put_from) option->apply(o, value);
+  }
+  return settle(o);
+}
+
 }  // namespace steelyard::cli

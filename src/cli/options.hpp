@@ -6,6 +6,7 @@
 #include <span>
 #include <string>
 #include <string_view>
+#include <utility>
 #include <vector>
 
 #include "commands.hpp"
@@ -16,6 +17,8 @@ namespace steelyard::cli {
 /// Whether something is done: by looking at the terminal, or as the user says.
 enum class When { automatic, always, never };
 
+struct OptionInfo;
+
 /// Everything a command line can ask for.
 struct Options {
   std::string file;  ///< "-": standard input
@@ -24,8 +27,10 @@ struct Options {
   std::optional<Grade> fail_on;
   bool effect_prior_given = false;
   bool spread_prior_given = false;
-  std::string svg, json;  ///< "": not asked for; "-": standard output
-  bool from_result = false;
+  std::string svg, json;     ///< "": not asked for; "-": standard output
+  bool from_result = false;  ///< `file` is a result to repeat
+  /// What was given, in order, for a run that starts from recorded options.
+  std::vector<std::pair<const OptionInfo*, std::string>> given;
   std::optional<std::size_t> width;
   When colour = When::automatic;
   When utf8 = When::automatic;
@@ -56,6 +61,9 @@ struct OptionInfo {
 /// What only all options together can tell: a prior without mass in the direction asked, two outputs
 /// on standard output, ... One sentence each.
 [[nodiscard]] std::vector<std::string> settle(Options& options);
+
+/// The options of a recorded run with what was given on top; complains as `settle` does.
+[[nodiscard]] std::vector<std::string> build_on(const AnalysisOptions& recorded, Options& options);
 
 /// The words of a list like "either|greater|less".
 [[nodiscard]] std::vector<std::string_view> words_of(std::string_view choices);

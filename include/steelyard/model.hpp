@@ -67,8 +67,8 @@ struct SpreadPrior {
 struct PriorShape {
   double low = -std::numeric_limits<double>::infinity();   ///< support
   double high = std::numeric_limits<double>::infinity();
-  double center = 0.0;           ///< the mode (of the uncut density)
-  double scale = 1.0;            ///< its width
+  double center = 0.0;           ///< the mode; where a cut has removed it, the edge that is left
+  double scale = 1.0;            ///< its width; at an edge, the length over which the density falls by e
   double log_peak = 0.0;         ///< largest log density inside the support
 };
 [[nodiscard]] PriorShape shape(const EffectPrior& prior);
@@ -79,7 +79,8 @@ struct PriorShape {
 [[nodiscard]] double tail_order(const EffectPrior& prior);
 [[nodiscard]] double tail_order(const SpreadPrior& prior);
 
-/// Error when the direction leaves no prior mass (log tail below −700 counts as none) or a parameter is out of its domain.
+/// Error when the direction leaves no prior mass (a log mass below −1e6 counts as none) or a parameter
+/// is out of its domain.
 [[nodiscard]] std::optional<Diagnostic> problem_with(const EffectPrior& prior);
 [[nodiscard]] std::optional<Diagnostic> problem_with(const SpreadPrior& prior);
 

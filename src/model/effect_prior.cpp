@@ -68,10 +68,6 @@ Canonical canonical(const EffectPrior& prior) {
   return c;
 }
 
-double log_mass(const Canonical& c) {
-  return c.cut ? model::log_upper(c.standard, -c.location / c.scale) : 0.0;
-}
-
 double uncut_log_density(const Canonical& c, double x) {
   return model::log_density(c.standard, (x - c.location) / c.scale) - std::log(c.scale);
 }
@@ -81,7 +77,10 @@ double canonical_log_density(const Canonical& c, double x) {
   if (x < c.low || x > c.high || std::isinf(x)) return -infinity;
   if (c.kind == Kind::flat) return 0.0;
   if (c.kind == Kind::uniform) return -std::log(c.high - c.low);
-  return uncut_log_density(c, x) - log_mass(c);
+  if (c.cut) {
+    return model::log_density_beyond(c.standard, -c.location / c.scale, x / c.scale) - std::log(c.scale);
+  }
+  return uncut_log_density(c, x);
 }
 
 double uniform_lower(const Canonical& c, double x) {
@@ -102,16 +101,13 @@ bool is_narrow(const Canonical& c, double x) {
 double cut_lower(const Canonical& c, double x) {
   if (x <= 0.0) return 0.0;
   const double from = -c.location / c.scale;
-  const double mass = log_mass(c);
-  if (is_narrow(c, x) && mass > -600.0) {
-    return model::narrow_interval(c.standard, from, x / c.scale) / std::exp(mass);
-  }
-  return -std::expm1(model::log_upper(c.standard, (x - c.location) / c.scale) - mass);
+  if (is_narrow(c, x)) return model::narrow_interval(c.standard, from, x / c.scale);
+  return -std::expm1(model::log_upper_beyond(c.standard, from, x / c.scale));
 }
 
 double cut_upper(const Canonical& c, double x) {
   if (x <= 0.0) return 1.0;
-  return std::exp(std::min(0.0, model::log_upper(c.standard, (x - c.location) / c.scale) - log_mass(c)));
+  return std::exp(model::log_upper_beyond(c.standard, -c.location / c.scale, x / c.scale));
 }
 
 double canonical_lower(const Canonical& c, double x) {

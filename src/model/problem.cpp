@@ -22,9 +22,9 @@ constexpr double largest = 1e100;
 constexpr double smallest = 1e-100;
 // More degrees of freedom than this can't be told from a Normal distribution.
 constexpr double most_df = 1e9;
-// A cut that leaves less than e^-10000 leaves nothing: the logarithm of what is left still has to be
-// right to 1e-11.
-constexpr double least_log_mass = -1e4;
+// A cut that leaves less than e^-1000000 leaves nothing: a t family with many degrees of freedom would lose
+// digits beyond, and nobody means it.
+constexpr double least_log_mass = -1e6;
 
 using Problem = std::optional<Diagnostic>;
 
@@ -34,20 +34,20 @@ Diagnostic problem(std::string code, std::string what, std::string remedy) {
 
 Problem check_positive(double value, std::string_view name, std::string_view family) {
   if (value >= smallest && value <= largest) return std::nullopt;
-  return problem("prior-parameter", fmt::format("The {} of a {} prior is {}.", name, family, value),
+  return problem("prior-parameter", fmt::format("The {} of {} prior is {}.", name, family, value),
                  fmt::format("It must be a positive number{}.",
                              value > 0.0 ? ", not smaller than 1e-100 and not larger than 1e100" : ""));
 }
 
 Problem check_finite(double value, std::string_view name, std::string_view family) {
   if (std::abs(value) <= largest) return std::nullopt;
-  return problem("prior-parameter", fmt::format("The {} of a {} prior is {}.", name, family, value),
+  return problem("prior-parameter", fmt::format("The {} of {} prior is {}.", name, family, value),
                  "It must be a number between -1e100 and 1e100.");
 }
 
 Problem check_df(double df, std::string_view name, std::string_view family) {
   if (df > most_df) {
-    return problem("prior-parameter", fmt::format("The {} of a {} prior is {}.", name, family, df),
+    return problem("prior-parameter", fmt::format("The {} of {} prior is {}.", name, family, df),
                    "It must not be larger than 1e9; use a Normal prior instead.");
   }
   return check_positive(df, name, family);
@@ -62,32 +62,34 @@ Problem check_order(double low, double high) {
 Problem first(Problem a, Problem b) { return a ? a : b; }
 
 Problem parameters(const CauchyPrior& f) {
-  return first(check_finite(f.location, "location", "Cauchy"), check_positive(f.scale, "scale", "Cauchy"));
+  return first(check_finite(f.location, "location", "a Cauchy"),
+               check_positive(f.scale, "scale", "a Cauchy"));
 }
 Problem parameters(const NormalPrior& f) {
-  return first(check_finite(f.mean, "mean", "Normal"), check_positive(f.sd, "standard deviation", "Normal"));
+  return first(check_finite(f.mean, "mean", "a Normal"),
+               check_positive(f.sd, "standard deviation", "a Normal"));
 }
 Problem parameters(const StudentTPrior& f) {
-  return first(
-      first(check_finite(f.location, "location", "Student t"), check_positive(f.scale, "scale", "Student t")),
-      check_df(f.df, "number of degrees of freedom", "Student t"));
+  return first(first(check_finite(f.location, "location", "a Student t"),
+                     check_positive(f.scale, "scale", "a Student t")),
+               check_df(f.df, "number of degrees of freedom", "a Student t"));
 }
 Problem parameters(const UniformPrior& f) {
   return first(
-      first(check_finite(f.low, "lower end", "uniform"), check_finite(f.high, "upper end", "uniform")),
+      first(check_finite(f.low, "lower end", "a uniform"), check_finite(f.high, "upper end", "a uniform")),
       check_order(f.low, f.high));
 }
 Problem parameters(const FlatPrior&) { return std::nullopt; }
 
-Problem parameters(const HalfCauchyPrior& f) { return check_positive(f.scale, "scale", "half-Cauchy"); }
-Problem parameters(const HalfNormalPrior& f) { return check_positive(f.scale, "scale", "half-Normal"); }
+Problem parameters(const HalfCauchyPrior& f) { return check_positive(f.scale, "scale", "a half-Cauchy"); }
+Problem parameters(const HalfNormalPrior& f) { return check_positive(f.scale, "scale", "a half-Normal"); }
 Problem parameters(const HalfStudentTPrior& f) {
-  return first(check_positive(f.scale, "scale", "half-Student-t"),
-               check_df(f.df, "number of degrees of freedom", "half-Student-t"));
+  return first(check_positive(f.scale, "scale", "a half-Student-t"),
+               check_df(f.df, "number of degrees of freedom", "a half-Student-t"));
 }
 Problem parameters(const InverseGammaPrior& f) {
-  return first(check_df(f.shape, "shape", "inverse-gamma"),
-               check_positive(f.scale, "scale", "inverse-gamma"));
+  return first(check_df(f.shape, "shape", "an inverse-gamma"),
+               check_positive(f.scale, "scale", "an inverse-gamma"));
 }
 Problem parameters(const LogNormalPrior& f) {
   if (!(std::abs(f.log_mean) <= 200.0)) {
@@ -103,14 +105,14 @@ Problem parameters(const LogNormalPrior& f) {
   }
   return std::nullopt;
 }
-Problem parameters(const ExponentialPrior& f) { return check_positive(f.mean, "mean", "exponential"); }
+Problem parameters(const ExponentialPrior& f) { return check_positive(f.mean, "mean", "an exponential"); }
 Problem parameters(const UniformSpreadPrior& f) {
   if (f.low < 0.0) {
     return problem("prior-parameter", fmt::format("A uniform prior of the spread starts at {}.", f.low),
                    "A spread can't be negative; start at 0 or above.");
   }
   return first(
-      first(check_finite(f.low, "lower end", "uniform"), check_finite(f.high, "upper end", "uniform")),
+      first(check_finite(f.low, "lower end", "a uniform"), check_finite(f.high, "upper end", "a uniform")),
       check_order(f.low, f.high));
 }
 

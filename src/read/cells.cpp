@@ -6,8 +6,6 @@
 
 #include <fmt/format.h>
 
-#include "read/printed.hpp"
-
 namespace steelyard::read {
 
 namespace {
@@ -40,6 +38,12 @@ Marks count_marks(const Table& table, const std::vector<const Column*>& known) {
   return marks;
 }
 
+const char* broken_count(const Printed& printed) {
+  if (!printed.has_value()) return "is not one number";
+  if (printed.value < 0.0) return "is negative";
+  return printed.value != std::floor(printed.value) ? "is not a whole number" : nullptr;
+}
+
 // ---- one cell ---------------------------------------------------------------------------------------
 
 class CellReader {
@@ -59,21 +63,9 @@ class CellReader {
  private:
   void number(Cell& cell, const Column& column) {
     const Scan scan = scan_printed(cell.text, table_.style);
-    if (scan.fault != Fault::none) {
-      fault(cell, scan.fault);
-    } else if (scan.percent && !takes_percent(column)) {
-      error(
-          cell, "percent-outside-p",
-          [&] {
-            return fmt::format("{} is a percentage, but the column \"{}\" does not hold probabilities.",
-                               quoted(cell.text), column.name);
-          },
-          "Write the number itself.");
-    } else if (column.kind == ColumnKind::count) {
-      count(cell, column, scan.printed);
-    } else {
-      cell.printed = scan.printed;
-    }
+    if (scan.fault != Fault::none) return fault(cell, scan.fault);
+    if (auto problem = set_printed(cell, column, scan, place_of(table_, cell)))
+      problems_.add(std::move(*problem));
   }
 
   void fault(const Cell& cell, Fault fault) {
@@ -81,30 +73,6 @@ class CellReader {
     const bool ambiguous = ask_ && fault == Fault::comma && decimal_mark(cell.text) == Mark::either;
     problems_.add(ambiguous ? describe_ambiguous(cell.text, place_of(table_, cell))
                             : describe(fault, cell.text, place_of(table_, cell)));
-  }
-
-  // A count is exact: 30 people are not 29.5 to 30.5 people.
-  void count(Cell& cell, const Column& column, Printed printed) {
-    const char* rule = nullptr;
-    if (!printed.has_value()) {
-      rule = "is not one number";
-    } else if (printed.value < 0.0) {
-      rule = "is negative";
-    } else if (printed.value != std::floor(printed.value)) {
-      rule = "is not a whole number";
-    }
-    if (rule != nullptr) {
-      return error(
-          cell, "not-a-count",
-          [&] {
-            return fmt::format("{} {}, but the column \"{}\" counts {}.", quoted(cell.text), rule,
-                               column.name, column.unit == "year" ? "whole years" : column.unit);
-          },
-          "Write a whole number, 0 or more, or leave the cell empty.");
-    }
-    printed.relation = Relation::exact;
-    printed.low = printed.high = printed.value;
-    cell.printed = printed;
   }
 
   void choose(Cell& cell, const Column& column);
@@ -207,6 +175,32 @@ void read_words(Table& table, Problems& problems) {
 }
 
 }  // namespace
+
+std::optional<Diagnostic> set_printed(Cell& cell, const Column& column, const Scan& scan,
+                                      const Place& where) {
+  const auto error = [&](const char* code, std::string what, const char* remedy) {
+    return Diagnostic{Severity::error, code, where, std::move(what), remedy};
+  };
+  Printed printed = scan.printed;
+  if (scan.percent && !takes_percent(column)) {
+    return error("percent-outside-p",
+                 fmt::format("{} is a percentage, but the column \"{}\" does not hold probabilities.",
+                             quoted(cell.text), column.name),
+                 "Write the number itself.");
+  }
+  if (column.kind == ColumnKind::count) {
+    if (const char* rule = broken_count(printed)) {
+      return error("not-a-count",
+                   fmt::format("{} {}, but the column \"{}\" counts {}.", quoted(cell.text), rule,
+                               column.name, column.unit == "year" ? "years" : column.unit),
+                   "Write a whole number, 0 or more, or leave the cell empty.");
+    }
+    printed.relation = Relation::exact;
+    printed.low = printed.high = printed.value;
+  }
+  cell.printed = printed;
+  return std::nullopt;
+}
 
 std::uint32_t narrow(std::size_t number) {
   constexpr std::size_t largest = std::numeric_limits<std::uint32_t>::max();

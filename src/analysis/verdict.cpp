@@ -15,6 +15,7 @@ struct Question {
   std::string no;               ///< "no effect"
   std::string if_yes;           ///< "if there is an effect"
   std::string if_no;            ///< "if there is none"
+  std::string brief_no;         ///< `no` once it has been named
   double log_prior_odds = 0.0;  ///< of yes against no
 };
 
@@ -23,8 +24,8 @@ std::string odds_clause(const Question& question, double log_bf) {
   const bool up = log_bf >= 0;
   const double prior = up ? question.log_prior_odds : -question.log_prior_odds;
   const double posterior = prior + std::fabs(log_bf);
-  const std::string& favoured = up ? question.yes : question.no;
-  const std::string& other = up ? question.no : question.yes;
+  const std::string& favoured = up ? question.yes : question.brief_no;
+  const std::string& other = up ? question.brief_no : question.yes;
   const std::string result = posterior >= 0 ? fmt::format("{} for {}", odds_text(posterior), favoured)
                                             : fmt::format("{}, still for {}", odds_text(-posterior), other);
   const bool even = odds_text(prior) == "1 to 1";
@@ -64,8 +65,9 @@ std::string effect_sentence(const PoolResult& result, const Priors& priors) {
         "only.",
         phrase);
   }
-  return answer({phrase, "no effect", "if there is " + phrase, "if there is none", std::log(yes / no)},
-                result.effect->log_bf);
+  return answer(
+      {phrase, "no effect", "if there is " + phrase, "if there is none", "no effect", std::log(yes / no)},
+      result.effect->log_bf);
 }
 
 std::string heterogeneity_sentence(const PoolResult& result, const Priors& priors, std::size_t studies) {
@@ -76,8 +78,8 @@ std::string heterogeneity_sentence(const PoolResult& result, const Priors& prior
     return "Whether the effect varies from study to study was not weighed: the assumed model probabilities "
            "leave room for one answer only.";
   }
-  return answer({"effects that vary from study to study", "the same effect in every study", "if effects vary",
-                 "if they are the same", std::log(yes / no)},
+  return answer({"varying effects", "one effect shared by all studies", "if effects vary",
+                 "if all share one effect", "one shared effect", std::log(yes / no)},
                 result.heterogeneity->log_bf);
 }
 

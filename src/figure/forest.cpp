@@ -63,15 +63,18 @@ Scale effect_scale(const Analysis& analysis, const std::vector<std::size_t>& row
   return {low - margin, high + margin, false, effect_name(analysis.studies)};
 }
 
-/// Symmetrical decibans that hold nearly all bars; the few beyond are drawn cut, and said to be.
+/// Symmetrical decibans made for comparing the studies: what goes far beyond most of them, as the pooled
+/// evidence often does, is drawn cut, and said to be.
 Scale weight_scale(const Forest& forest) {
   std::vector<double> sizes;
   for (const auto& study : forest.studies) sizes.push_back(std::fabs(decibans(study.log_bf)));
+  const double common = std::max(10.0, 2.0 * nth(sizes, 0.9));
   for (const auto& pooled : forest.pooled)
     if (pooled.log_bf) sizes.push_back(std::fabs(decibans(*pooled.log_bf)));
-  const double most = nth(sizes, 1.0);
-  const double common = std::max(10.0, 4.0 * nth(sizes, 0.75));
-  const double limit = std::min(std::max(most, 5.0), common);
+  double limit = std::min(std::max(nth(sizes, 1.0), 5.0), common);
+  // From 4 to 5 times a power of ten, three ticks of a round step don't fit: take 5.
+  const double power = std::pow(10.0, std::floor(std::log10(limit)));
+  if (limit >= 3.8 * power && limit < 5 * power) limit = 5 * power;
   return {-limit * 1.04, limit * 1.04, false, "weight of evidence, decibans"};
 }
 
@@ -102,15 +105,15 @@ std::vector<ForestPooled> pooled_rows(const Analysis& analysis, const Scale& sca
   const std::string missing = "not identified";
   const auto effect = &Posterior::effect_density;
   std::vector<ForestPooled> out;
-  out.push_back(pooled_row(analysis, "Same effect everywhere", result.pooled_effect_fixed,
-                           result.effect_fixed, missing, scale, effect, Within::fixed_effect));
+  out.push_back(pooled_row(analysis, "Same effect", result.pooled_effect_fixed, result.effect_fixed, missing,
+                           scale, effect, Within::fixed_effect));
   if (analysis.studies.size() > 1) {
-    out.push_back(pooled_row(analysis, "Effects vary: their mean", result.pooled_effect_random,
-                             result.effect_random, missing, scale, effect, Within::random_effect));
-    out.push_back(pooled_row(analysis, "Both, averaged", result.pooled_effect, result.effect, missing, scale,
+    out.push_back(pooled_row(analysis, "Varying effects", result.pooled_effect_random, result.effect_random,
+                             missing, scale, effect, Within::random_effect));
+    out.push_back(pooled_row(analysis, "Averaged", result.pooled_effect, result.effect, missing, scale,
                              effect, Within::average));
   }
-  out.push_back(pooled_row(analysis, "A new study", result.new_study, {}, "", scale,
+  out.push_back(pooled_row(analysis, "New study", result.new_study, {}, "", scale,
                            &Posterior::new_study_density, Within::average));
   return out;
 }

@@ -21,24 +21,22 @@ std::string scientific(double value) {
   return with_minus(fmt::format("{:.2f}e{}", value / std::pow(10.0, exponent), exponent));
 }
 
-/// 1, 2 or 5 times a power of ten, the smallest step that needs at most `at_most` ticks.
-double round_step(double width, std::size_t at_most) {
-  const double raw = width / static_cast<double>(std::max<std::size_t>(at_most, 2) - 1);
-  const double power = std::pow(10.0, std::floor(std::log10(raw)));
-  for (const double factor : {1.0, 2.0, 5.0})
-    if (factor * power >= raw * (1 - 1e-9)) return factor * power;
-  return 10.0 * power;
+/// 1, 2 or 5 times a power of ten: the largest such number that is not above `value`.
+double round_down(double value) {
+  const double power = std::pow(10.0, std::floor(std::log10(value)));
+  for (const double factor : {5.0, 2.0})
+    if (factor * power <= value) return factor * power;
+  return power;
 }
 
 std::vector<Tick> linear_ticks(const Scale& scale, std::size_t at_most) {
-  double step = round_step(scale.high - scale.low, at_most);
-  const auto first_of = [&] { return std::ceil(scale.low / step - 1e-9); };
-  const auto last_of = [&] { return std::floor(scale.high / step + 1e-9); };
-  while (last_of() - first_of() + 1 > static_cast<double>(at_most)) step = round_step(step * 2.01, 2);
+  double step = round_down((scale.high - scale.low) / static_cast<double>(at_most + 1));
+  const auto first = [&] { return std::ceil(scale.low / step - 1e-9); };
+  const auto last = [&] { return std::floor(scale.high / step + 1e-9); };
+  while (last() - first() + 1 > static_cast<double>(at_most)) step = round_down(step * 2.51);
   const int decimals = std::clamp(static_cast<int>(-std::floor(std::log10(step) + 1e-9)), 0, 12);
   std::vector<Tick> out;
-  for (double k = first_of(); k <= last_of(); k += 1.0)
-    out.push_back({k * step, number_text(k * step, decimals)});
+  for (double k = first(); k <= last(); k += 1.0) out.push_back({k * step, number_text(k * step, decimals)});
   return out;
 }
 

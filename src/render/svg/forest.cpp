@@ -77,7 +77,7 @@ Layout layout(const figure::Forest& forest, const SvgStyle& style) {
     out.number_right = out.value_right;
     out.label_width = out.width - 2 * margin - numbers - 8;
     out.weight = {forest.weight, out.width - margin - weights - 66, out.width - margin - weights - 4};
-    out.effect = {forest.effect, margin, out.weight.from - 10};
+    out.effect = {forest.effect, margin, out.weight.from - 24};
     return out;
   }
   out.label_width = label_room(forest, out.size, 175);
@@ -87,25 +87,25 @@ Layout layout(const figure::Forest& forest, const SvgStyle& style) {
   return out;
 }
 
-/// Column heads; returns the y where the rows begin.
+/// Column heads in two lines; returns the y where the rows begin.
 double heads(Drawing& page, const figure::Forest& forest, const Layout& at) {
+  const double small = at.size - 0.5;
   const double first = margin + ascent * at.size, second = first + 1.3 * at.size;
-  const std::string numbers = fmt::format("after pooling [{:g}%]", 100 * forest.level);
-  const double middle = at.weight.px(0.0);
-  const bool room = at.number_width >= text_width(numbers, at.size) - 8;
+  const double zero = at.weight.px(0.0), middle = (at.effect.from + at.effect.to) / 2;
+  const std::string interval = fmt::format("[{:g}%]", 100 * forest.level);
   page.text(at.label_x, first, "Study", "ink", at.size, Anchor::start, true);
   if (at.stacked) {
-    page.text(at.value_right, first, numbers, "ink", at.size, Anchor::end, true);
+    page.text(at.value_right, first, "after pooling " + interval, "ink", at.size, Anchor::end, true);
+    page.text(middle, second, "likelihood of the effect", "ink", small, Anchor::middle);
   } else {
-    const std::string head = room ? numbers : fmt::format("[{:g}%]", 100 * forest.level);
-    page.text(at.number_right, first, head, "ink", at.size, Anchor::end);
-    page.label((at.effect.from + at.effect.to) / 2, first, "likelihood of the effect",
-               at.effect.to - at.effect.from - 6, "ink", at.size, Anchor::middle, true);
-    page.text(middle, first, "evidence for", "ink", at.size, Anchor::middle, true);
+    page.text(at.number_right, first, "after pooling", "ink", at.size, Anchor::end, true);
+    page.text(at.number_right, second, interval, "ink", small, Anchor::end);
+    page.label(middle, first, "likelihood of the effect", at.effect.to - at.effect.from - 6, "ink", at.size,
+               Anchor::middle, true);
+    page.text(zero, first, "evidence for", "ink", at.size, Anchor::middle, true);
   }
-  const double small = at.size - 0.5;
-  page.text(middle - 5, second, at.stacked ? "none" : "no effect", "ink", small, Anchor::end);
-  page.text(middle + 5, second, at.stacked ? "effect" : "an effect", "ink", small, Anchor::start);
+  page.text(zero - 5, second, at.stacked ? "none" : "no effect", "ink", small, Anchor::end);
+  page.text(zero + 5, second, at.stacked ? "effect" : "an effect", "ink", small, Anchor::start);
   return second + 0.6 * at.size;
 }
 
@@ -158,6 +158,14 @@ void pooled_row(Drawing& page, const figure::Forest& forest, const figure::Fores
   page.marks.emplace_back(GroupEnd{});
 }
 
+/// Grid and lines of no effect, behind the marks.
+void background(Drawing& page, const Layout& at, double top, double bottom) {
+  for (const Axis* axis : {&at.effect, &at.weight}) {
+    grid_x(page, *axis, top, bottom, at.size - 0.5);
+    page.line(axis->px(0.0), top, axis->px(0.0), bottom, "null");
+  }
+}
+
 double footer(Drawing& page, const figure::Forest& forest, const Layout& at, double y) {
   const double room = at.width - 2 * margin;
   y += 1.6 * at.size;
@@ -188,12 +196,10 @@ std::string render_svg(const figure::Forest& forest, const SvgStyle& style) {
   const double pooled_top = studies_end + 6;
   const double pooled_row_height = std::max(at.row, at.stacked ? 33.0 : 22.0);
   const double bottom = pooled_top + pooled_row_height * static_cast<double>(forest.pooled.size());
-  grid_x(page, at.effect, top, bottom, at.size - 0.5);
-  grid_x(page, at.weight, top, bottom, at.size - 0.5);
-  page.line(at.effect.px(0.0), top, at.effect.px(0.0), bottom, "null");
-  page.line(at.weight.px(0.0), top, at.weight.px(0.0), bottom, "null");
+  if (!at.stacked) background(page, at, top, bottom);
   double y = top;
   for (const auto& study : forest.studies) {
+    if (at.stacked) background(page, at, y + 1.25 * at.size, y + at.row - 1);
     study_row(page, forest, study, at, y);
     y += at.row;
   }
@@ -203,6 +209,7 @@ std::string render_svg(const figure::Forest& forest, const SvgStyle& style) {
   pooled_at.hill = 0.55 * (pooled_row_height - (at.stacked ? 1.25 * at.size : 0.0));
   y = pooled_top;
   for (const auto& pooled : forest.pooled) {
+    if (at.stacked) background(page, at, y + 1.25 * at.size, y + pooled_row_height - 1);
     pooled_row(page, forest, pooled, pooled_at, y);
     y += pooled_row_height;
   }

@@ -158,9 +158,10 @@ std::string row(const Columns& columns, const std::string& label, const std::u32
 std::string head(const Columns& columns) {
   const TextStyle& style = columns.style;
   std::u32string out = fit(U"Study", columns.label, style);
-  if (columns.plot > 0) out += U" " + fit(U"Likelihood of the effect", columns.plot, style);
+  if (columns.plot > 0)
+    out += U" " + fit(columns.plot < 24 ? U"Likelihood" : U"Likelihood of the effect", columns.plot, style);
   const std::string interval = fmt::format("{:g}%", 100 * columns.forest.level);
-  const std::string pooled = columns.number >= 19 ? "After pooling, " + interval : interval;
+  const std::string pooled = columns.number >= 18 ? "After pooling, " + interval : interval;
   out += U" " + fit(shown(pooled, style), columns.number, style, true);
   out += U" " + fit(U"Decibans", columns.weight, style, true);
   if (columns.bar > 0) {
@@ -174,26 +175,41 @@ std::string head(const Columns& columns) {
   return toned(out, Tone::faint, style) + "\n";
 }
 
+/// The ticks that fit with their numbers, and where each number starts.
+std::vector<std::pair<std::size_t, figure::Tick>> placed_ticks(const Columns& columns) {
+  std::vector<std::pair<std::size_t, figure::Tick>> out;
+  for (std::size_t most = std::max<std::size_t>(columns.plot / 4, 2); most >= 2; --most) {
+    out.clear();
+    std::size_t free_from = 0;
+    bool fits = true;
+    for (const auto& tick : figure::ticks(columns.forest.effect, most)) {
+      const std::size_t length = shown(tick.text, columns.style).size();
+      const std::size_t middle = columns.label + 1 + columns.at(tick.value);
+      const std::size_t start = middle - std::min(middle, (length - 1) / 2);
+      fits = fits && start >= free_from;
+      free_from = start + length + 2;
+      out.emplace_back(start, tick);
+    }
+    if (fits) return out;
+  }
+  out.resize(std::min<std::size_t>(out.size(), 1));
+  return out;
+}
+
 std::string axis(const Columns& columns) {
   if (columns.plot == 0) return "";
-  std::u32string line(columns.plot, columns.glyphs.line), numbers(columns.label + 1 + columns.plot + 8, U' ');
-  std::size_t free_from = 0;
-  for (const auto& tick : figure::ticks(columns.forest.effect, std::max<std::size_t>(columns.plot / 8, 2))) {
-    const std::u32string text = shown(tick.text, columns.style);
-    const std::size_t cell = columns.at(tick.value);
-    line[cell] = columns.glyphs.tick;
-    const std::size_t middle = columns.label + 1 + cell;
-    const std::size_t start = middle - std::min(middle, text.size() / 2);
-    if (start < free_from) continue;
-    numbers.replace(start, text.size(), text);
-    free_from = start + text.size() + 1;
+  const TextStyle& style = columns.style;
+  std::u32string line(columns.plot, columns.glyphs.line), numbers;
+  for (const auto& [start, tick] : placed_ticks(columns)) {
+    line[columns.at(tick.value)] = columns.glyphs.tick;
+    numbers.resize(std::max(numbers.size(), start), U' ');
+    numbers += shown(tick.text, style);
   }
-  numbers.erase(numbers.find_last_not_of(U' ') + 1);
-  std::u32string title = shown(columns.forest.effect.title, columns.style);
-  title = fit(std::move(title), columns.label + 1 + columns.plot, columns.style, true);
+  const std::size_t width = columns.label + 1 + columns.plot;
+  const std::u32string title = fit(shown(columns.forest.effect.title, style), width, style, true);
   const std::u32string indent(columns.label + 1, U' ');
-  return encode(indent + line) + "\n" + toned(numbers, Tone::faint, columns.style) + "\n" +
-         toned(title, Tone::faint, columns.style) + "\n";
+  return encode(indent + line) + "\n" + toned(numbers, Tone::faint, style) + "\n" +
+         toned(title, Tone::faint, style) + "\n";
 }
 
 }  // namespace

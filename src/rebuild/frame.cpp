@@ -4,6 +4,8 @@
 
 #include <cmath>
 
+#include "rebuild/groups.hpp"
+
 namespace steelyard::rebuilding {
 
 namespace {
@@ -126,6 +128,19 @@ std::optional<Frame> single_frame(Numbers& x, Design design, FrameFrom from) {
 }  // namespace
 
 std::optional<Design> design_of(Numbers& x) {
+  if (has_third_group(x) && !x.present(Col::compare)) {
+    x.refuse(x.present(Col::n3) ? Col::n3 : Col::mean3, "groups-not-chosen",
+             "The row has more than two groups and does not say which of them to compare.",
+             "Fill `compare`: 1-3 sets group 1 against group 3, 1+2-3 merges groups 1 and 2 first.");
+    return std::nullopt;
+  }
+  if (x.present(Col::correlation) && !x.present(Col::design)) {
+    x.refuse(Col::correlation, "test-of-correlation",
+             "The row prints a correlation, so its test is not one of a mean difference.",
+             "Leave the test out, or say in `design` what it compares.");
+    return std::nullopt;
+  }
+  if (x.present(Col::compare)) return Design::two_groups;
   const std::string word = x.facts().word(Col::design);
   if (word == "two-groups") return Design::two_groups;
   if (word == "one-sample") return Design::one_sample;
@@ -137,7 +152,7 @@ std::optional<Design> design_of(Numbers& x) {
     const Col wanted = x.has(Col::n1) ? Col::n2 : Col::n1;
     x.refuse(given, "group-size-missing",
              fmt::format("{} is given but {} is empty.", name(given), name(wanted)),
-             fmt::format("Fill {}, or give n and say in `design` whether it is one-sample or paired.",
+             fmt::format("Fill {}, or give n and say in `design` whether it is one_sample or paired.",
                          name(wanted)));
     return std::nullopt;
   }
@@ -146,11 +161,18 @@ std::optional<Design> design_of(Numbers& x) {
   if (x.has(Col::n) && x.present(Col::sd_diff)) return Design::paired;
   x.refuse(x.has(Col::n) ? Col::n : Col::df, "design-unknown",
            "The sizes do not tell whether this is a test of two groups, of one sample or of pairs.",
-           "Fill `design` with two-groups, one-sample or paired, or give n1 and n2 for two groups.");
+           "Fill `design` with two_groups, one_sample or paired, or give n1 and n2 for two groups.");
   return std::nullopt;
 }
 
 std::optional<Sizes> two_group_sizes(Numbers& x) {
+  if (x.present(Col::compare)) {
+    const auto sides = comparison_of(x);
+    if (!sides) return std::nullopt;
+    const auto first = size_of(x, sides->first);
+    const auto second = size_of(x, sides->second);
+    return first && second ? std::optional(Sizes{*first, *second}) : std::nullopt;
+  }
   if (x.has_all({Col::n1, Col::n2})) {
     say_small_group(x, Col::n1);
     say_small_group(x, Col::n2);

@@ -11,7 +11,7 @@ namespace steelyard::rebuilding {
 
 namespace {
 
-constexpr std::size_t most_offers = 4;
+constexpr std::size_t most_offers = 5;
 
 std::string joined(const std::vector<std::string>& words, std::string_view last) {
   if (words.size() < 2) return words.empty() ? "" : words.front();
@@ -36,6 +36,12 @@ std::vector<std::string> given(const Numbers& x) {
   return result;
 }
 
+bool within(const std::vector<std::string>& part, const std::vector<std::string>& whole) {
+  return std::all_of(part.begin(), part.end(), [&](const std::string& word) {
+    return std::find(whole.begin(), whole.end(), word) != whole.end();
+  });
+}
+
 // The smallest additions that open a route, those that build on what the row has first.
 std::vector<std::string> offers(const Numbers& x) {
   struct Offer {
@@ -48,7 +54,7 @@ std::vector<std::string> offers(const Numbers& x) {
     if (missing.empty()) continue;
     const bool builds_on = missing.size() < route.core.size();
     const bool known =
-        std::any_of(all.begin(), all.end(), [&](const Offer& o) { return o.missing == missing; });
+        std::any_of(all.begin(), all.end(), [&](const Offer& o) { return within(o.missing, missing); });
     if (!known) all.push_back({builds_on, std::move(missing)});
   }
   std::stable_sort(all.begin(), all.end(), [](const Offer& a, const Offer& b) {
@@ -69,8 +75,9 @@ Diagnostic what_is_missing(const Numbers& x) {
       has.empty() ? "The row has no numbers to rebuild a test from."
                   : fmt::format("The row has {}, and no test can be rebuilt from that.", joined(has, "and"));
   const bool sizes = x.has(Col::n1) || x.has(Col::n) || x.has(Col::df);
-  std::string remedy = fmt::format("Any of these would do: {}{}; docs/formats.md lists all routes.",
-                                   joined(offers(x), "or"), sizes ? "" : ", with n1 and n2 (or n, or df)");
+  std::string remedy =
+      fmt::format("Any of these would do: {}{}; docs/formats.md lists all routes.",
+                  fmt::join(offers(x), "; "), sizes ? "" : ", each with n1 and n2 (or n, or df)");
   return {Severity::error, "cannot-rebuild", x.facts().row_place(), std::move(what), std::move(remedy)};
 }
 

@@ -1,9 +1,10 @@
 // Means with SDs or SEs of two groups, of one sample, of pairs.
 #include <cmath>
 
+#include "rebuild/intervals.hpp"
 #include "rebuild/routes.hpp"
 #include "rebuild/scores.hpp"
-#include "rebuild/welch.hpp"
+#include "rebuild/student.hpp"
 
 namespace steelyard::rebuilding {
 
@@ -36,26 +37,45 @@ std::optional<Solution> two_groups(Numbers& x, double sd1, double sd2, const Fra
   return solution;
 }
 
-bool sds_apply(const Numbers& x) {
-  return has_difference(x) && x.has_all({Col::sd1, Col::sd2}) && !pairs(x) && !single(x);
+// Final scores stand for themselves only where no baseline is printed.
+bool plain_groups(const Numbers& x) {
+  return has_difference(x) && !x.present(Col::compare) && !x.present(Col::baseline_mean1) && !pairs(x) &&
+         !single(x);
 }
 
-std::optional<Solution> solve_sds(Numbers& x) {
-  const auto frame = score_frame(x);
-  if (!frame) return std::nullopt;
-  const auto sizes = two_group_sizes(x);
-  return two_groups(x, x[Col::sd1], x[Col::sd2], *frame, *sizes);
-}
-
+bool sds_apply(const Numbers& x) { return plain_groups(x) && x.has_all({Col::sd1, Col::sd2}); }
 bool ses_apply(const Numbers& x) {
-  return has_difference(x) && x.has_all({Col::se1, Col::se2}) && !pairs(x) && !single(x);
+  return plain_groups(x) && x.has_all({Col::se1, Col::se2}) && !sds_apply(x);
 }
 
-std::optional<Solution> solve_ses(Numbers& x) {
+// The cells of one group, and which of them carries its spread.
+struct Cells {
+  Col mean, sd, se, low, high;
+};
+constexpr Cells group1 = {Col::mean1, Col::sd1, Col::se1, Col::ci_low1, Col::ci_high1};
+constexpr Cells group2 = {Col::mean2, Col::sd2, Col::se2, Col::ci_low2, Col::ci_high2};
+
+bool has_spread(const Numbers& x, const Cells& c) {
+  return x.has(c.sd) || x.has(c.se) || x.has_all({c.low, c.high});
+}
+
+double spread(Numbers& x, const Cells& c, double n) {
+  if (x.has(c.sd)) return x[c.sd];
+  if (n <= 1.0) return 0.0;
+  if (x.has(c.se)) return sd_from(x[c.se], n);
+  return sd_from((x[c.high] - x[c.low]) / (2.0 * upper_t((1.0 - ci_level(x)) / 2.0, n - 1.0)), n);
+}
+
+bool spreads_apply(const Numbers& x) {
+  return plain_groups(x) && has_spread(x, group1) && has_spread(x, group2) && !sds_apply(x) && !ses_apply(x);
+}
+
+// Of two groups, from whichever of SD, SE and interval each prints.
+std::optional<Solution> solve_groups(Numbers& x) {
   const auto frame = score_frame(x);
   if (!frame) return std::nullopt;
   const auto sizes = two_group_sizes(x);
-  return two_groups(x, sd_from(x[Col::se1], sizes->n1), sd_from(x[Col::se2], sizes->n2), *frame, *sizes);
+  return two_groups(x, spread(x, group1, sizes->n1), spread(x, group2, sizes->n2), *frame, *sizes);
 }
 
 bool mean_sd_applies(const Numbers& x) { return single(x) && x.has_all({Col::mean1, Col::sd1}); }
@@ -102,7 +122,7 @@ Route route_means_sds() {
           "t from means and SDs",
           {Col::mean1, Col::sd1, Col::mean2, Col::sd2},
           sds_apply,
-          solve_sds};
+          solve_groups};
 }
 
 Route route_means_ses() {
@@ -111,7 +131,18 @@ Route route_means_ses() {
           "t from means and SEs",
           {Col::mean1, Col::se1, Col::mean2, Col::se2},
           ses_apply,
-          solve_ses};
+          solve_groups};
+}
+
+Route route_means_spreads() {
+  return {{"means-and-spreads",
+           "mean1 and mean2, each with sd, se or interval (ci_low1, ci_high1, ...), n1 and n2",
+           "SD = √n·(high − low)/(2·t(level; n − 1)), then as for SDs", "Cochrane Handbook 5.1, 7.7.3.2",
+           "study,mean1,ci_low1,ci_high1,n1,mean2,sd2,n2\nA,32.1,30.0,34.2,25,29.4,4.8,22"},
+          "t from means and their intervals, SEs or SDs",
+          {Col::mean1, Col::ci_low1, Col::ci_high1, Col::mean2},
+          spreads_apply,
+          solve_groups};
 }
 
 Route route_mean_sd() {

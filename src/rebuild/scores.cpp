@@ -28,6 +28,7 @@ bool agrees_with_direction(Numbers& x, double difference) {
 }  // namespace
 
 bool has_difference(const Numbers& x) {
+  if (x.present(Col::compare)) return x.has(Col::mean_diff);
   return x.has(Col::mean_diff) || (x.has(Col::mean1) && (x.has(Col::mean2) || one_sample(x)));
 }
 

@@ -44,7 +44,7 @@ int stated_sign(Numbers& x) {
 
 int sign_of(Numbers& x) {
   if (const int stated = stated_sign(x); stated != 0) return stated;
-  if (x.has_all({Col::mean1, Col::mean2})) {
+  if (x.has_all({Col::mean1, Col::mean2}) && !x.present(Col::compare)) {
     const int sign = clear_sign(x.printed(Col::mean1), x.printed(Col::mean2));
     if (sign == 0) return 0;
     x.mark(Col::mean1);

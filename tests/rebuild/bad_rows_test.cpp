@@ -80,5 +80,5 @@ TEST_CASE("a row that can't be rebuilt says which columns would make it possible
   CHECK(steelyard::to_text(outcome.diagnostics[0]) ==
         "rows.csv:2:1: error: The row has n1, n2 and mean_diff, and no test can be rebuilt from that. Any of "
         "these "
-        "would do: se_diff, sd_diff, t or f; docs/formats.md lists all routes. [cannot-rebuild]");
+        "would do: se_diff; sd_diff; t; f; p; docs/formats.md lists all routes. [cannot-rebuild]");
 }

@@ -50,6 +50,11 @@ inline steelyard::NormalEstimate normal(const steelyard::Study& study) {
   return std::get<steelyard::NormalEstimate>(study.evidence);
 }
 
+/// A number that is exact as it stands: `=2.1!`.
+inline std::string exactly(double value) {
+  return std::string("=").append(std::to_string(value)).append("!");
+}
+
 inline bool says(const std::vector<steelyard::Diagnostic>& all, std::string_view code) {
   for (const auto& d : all) {
     if (d.code == code) return true;

@@ -91,10 +91,10 @@ TEST_CASE("Student's sleep data") {
   };
   std::vector<double> differences;
   for (std::size_t i = 0; i < a.size(); ++i) differences.push_back(a[i] - b[i]);
-  const auto text = [](double x) { return "=" + std::to_string(x) + "!"; };
-  const std::string means = text(mean(a)) + "," + text(sd(a)) + "," + text(mean(b)) + "," + text(sd(b));
+  const std::string means = help::exactly(mean(a)) + "," + help::exactly(sd(a)) + "," +
+                            help::exactly(mean(b)) + "," + help::exactly(sd(b));
   CHECK(exact(study("study,mean1,sd1,mean2,sd2,n1,n2\nA," + means + ",10,10")).t == printed(-1.8608, 4));
-  CHECK(exact(study("study,design,mean_diff,sd_diff,n\nA,paired," + text(mean(differences)) + "," +
-                    text(sd(differences)) + ",10"))
+  CHECK(exact(study("study,design,mean_diff,sd_diff,n\nA,paired," + help::exactly(mean(differences)) + "," +
+                    help::exactly(sd(differences)) + ",10"))
             .t == printed(-4.0621, 4));
 }

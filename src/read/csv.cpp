@@ -119,10 +119,8 @@ Outcome<Table> read_csv(std::string_view text, const std::string& file) {
   Table table;
   table.file = file;
   text = without_bom(text);
-  if (auto problem = problem_with_encoding(text, file)) {
-    problems.add(std::move(*problem));
-    return finish({}, problems);
-  }
+  for (Diagnostic& problem : problems_with_encoding(text, file)) problems.add(std::move(problem));
+  if (problems.has_errors()) return finish({}, problems);
   std::size_t start = skip_remarks(text);
   char separator = named_separator(text.substr(start));
   if (separator != '\0') {

@@ -218,10 +218,8 @@ Outcome<Table> read_json(std::string_view text, const std::string& file) {
   using namespace read;
   Problems problems;
   text = without_bom(text);
-  if (auto problem = problem_with_encoding(text, file)) {
-    problems.add(std::move(*problem));
-    return finish({}, problems);
-  }
+  for (Diagnostic& problem : problems_with_encoding(text, file)) problems.add(std::move(problem));
+  if (problems.has_errors()) return finish({}, problems);
   TableBuilder builder(text, file, problems);
   const bool whole = builder.read();
   const std::vector<Place> places = builder.places();

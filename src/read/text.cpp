@@ -52,11 +52,11 @@ bool is_blank(char32_t c) {
          c == 0x202F || c == 0x205F || c == 0x3000 || c == 0x2060 || c == 0xFEFF;
 }
 
-Diagnostic at_byte(std::string_view text, std::size_t offset, const std::string& file, std::string code,
-                   std::string what, std::string remedy) {
+std::vector<Diagnostic> at_byte(std::string_view text, std::size_t offset, const std::string& file,
+                                std::string code, std::string what, std::string remedy) {
   Locator locator(text);
   locator.advance_to(offset);
-  return {Severity::error, std::move(code), locator.place(file), std::move(what), std::move(remedy)};
+  return {{Severity::error, std::move(code), locator.place(file), std::move(what), std::move(remedy)}};
 }
 
 bool looks_like_utf16(std::string_view text) {
@@ -84,13 +84,10 @@ std::string_view without_bom(std::string_view text) {
   return text.substr(0, 3) == "\xEF\xBB\xBF" ? text.substr(3) : text;
 }
 
-std::optional<Diagnostic> problem_with_encoding(std::string_view text, const std::string& file) {
+std::vector<Diagnostic> problems_with_encoding(std::string_view text, const std::string& file) {
   if (looks_like_utf16(text)) {
-    return Diagnostic{Severity::error,
-                      "not-utf8",
-                      {file, 1, 1},
-                      "This file is UTF-16, not UTF-8.",
-                      "Save it again as \"CSV UTF-8\" or in a plain text editor as UTF-8."};
+    return at_byte(text, 0, file, "not-utf8", "This file is UTF-16, not UTF-8.",
+                   "Save it again as \"CSV UTF-8\" or in a plain text editor as UTF-8.");
   }
   const std::size_t bad = first_bad_byte(text);
   const void* nul = text.empty() ? nullptr : std::memchr(text.data(), 0, bad);
@@ -99,7 +96,7 @@ std::optional<Diagnostic> problem_with_encoding(std::string_view text, const std
     return at_byte(text, offset, file, "nul-byte", "There is a zero byte here, so this isn't a text file.",
                    "Save the table as CSV or JSON in UTF-8.");
   }
-  if (bad == text.size()) return std::nullopt;
+  if (bad == text.size()) return {};
   return at_byte(
       text, bad, file, "not-utf8",
       fmt::format("The byte 0x{:02X} here isn't UTF-8 text.", static_cast<unsigned char>(text[bad])),

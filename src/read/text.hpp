@@ -2,9 +2,9 @@
 #pragma once
 
 #include <cstddef>
-#include <optional>
 #include <string>
 #include <string_view>
+#include <vector>
 
 #include "steelyard/base.hpp"
 
@@ -37,8 +37,8 @@ class Locator {
 [[nodiscard]] std::string_view without_bom(std::string_view text);
 
 /// The first thing that keeps the bytes from being UTF-8 text: another encoding, a NUL byte, a broken
-/// sequence. Nothing when all is well.
-[[nodiscard]] std::optional<Diagnostic> problem_with_encoding(std::string_view text, const std::string& file);
+/// sequence. Empty when all is well.
+[[nodiscard]] std::vector<Diagnostic> problems_with_encoding(std::string_view text, const std::string& file);
 
 /// Bytes of the blank (ASCII, no-break, thin, ...) that `text` begins or ends with; 0 for none.
 [[nodiscard]] std::size_t blank_at_front(std::string_view text);

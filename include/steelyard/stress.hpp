@@ -26,7 +26,8 @@ struct StressOptions {
   std::vector<std::string> groups;
   bool grid = true;          ///< priors over the two-way grid
   bool shares = true;        ///< the evidence each study carries
-  std::size_t exact_shares = 12;  ///< up to that many studies over all orders
+  std::size_t exact_shares = 12;   ///< up to that many studies over all orders; at most 16
+  std::size_t most_shares = 1000;  ///< beyond that many studies no shares
   unsigned threads = 1;      ///< ≥ 1; the result is the same for any number
   /// Called with (steps done, steps in all) now and then, from one thread at a time; false stops. May be empty.
   std::function<bool(std::size_t, std::size_t)> progress;
@@ -65,15 +66,27 @@ struct Share {
   double error = 0.0;  ///< numerical, and, where only some orders were taken, their spread
 };
 
-/// A change that turns the verdict.
+/// A family of changes.
+enum class Change { study, order, width, scale, direction, model, group };
+
+/// The smallest change of its kind that turns the verdict.
 struct Turn {
-  enum class Kind { study, order, width, scale, direction, model, group };
-  Kind kind = Kind::study;
-  std::size_t index = 0;        ///< study, arrival, direction, or group; 0 for width and scale
-  double factor = 1.0;          ///< on the width or scale
-  double from = 0.0, to = 0.0;  ///< log Bayes factor of an effect before and after
+  Change kind = Change::study;
+  /// study: the one left out; order: how many had arrived, from 1; direction: as in `Direction`; model: 0 the
+  /// same effect, 1 varying effects; group: into `subsets`. 0 for width and scale.
+  std::size_t index = 0;
+  bool left_out = true;         ///< group: left out, or alone
+  double factor = 1.0;          ///< on the width or scale: beyond it the verdict turns
+  double from = 0.0, to = 0.0;  ///< log Bayes factor of an effect as it stands and after the change
   Stand before = Stand::undecided, after = Stand::undecided;
-  std::string sentence;         ///< "Without \"Row 7\" the odds fall from 21 to 1 to 2.4 to 1 ..."
+};
+
+/// Over all changes of a kind: between what the log Bayes factor of an effect stays.
+struct Firmness {
+  Change kind = Change::study;  ///< width: the whole two-way grid
+  std::size_t count = 0;        ///< changes made
+  double lowest = 0.0, highest = 0.0;
+  bool same_stand = true;       ///< the verdict never turns
 };
 
 struct StressResult {
@@ -89,8 +102,8 @@ struct StressResult {
   std::vector<Share> shares;              ///< by study; empty when not asked for
   bool shares_exact = true;               ///< over all orders
   std::size_t shares_orders = 0;          ///< orders taken when not
-  std::vector<Turn> turns;                ///< the smallest change of each kind that turns the verdict, studies first
-  std::vector<std::string> robust;        ///< statements that hold throughout
+  std::vector<Turn> turns;                ///< of each kind at most one, studies first; none: nothing turned it
+  std::vector<Firmness> firmness;         ///< of each kind that was tried
   bool accurate = true;
   bool stopped = false;                   ///< `progress` asked to stop; what is there is incomplete
 };

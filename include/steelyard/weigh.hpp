@@ -42,7 +42,9 @@ struct RegionResult {
   double prior_inside = 0.0;  ///< prior mass of the region
   RegionMass mean_effect, new_study;
   double positive = 0.0;  ///< P(mean effect > 0), given an effect model
-  double negative = 0.0;  ///< P(mean effect < 0)
+  /// log odds of a positive against a negative mean effect, given an effect model, exact in logarithms;
+  /// absent when the prior allows one sign only.
+  std::optional<double> log_sign_odds;
   std::optional<double> above_threshold;  ///< P(effect in a new study > threshold), given an effect model
   std::optional<double> above_threshold_all_models;
 };
@@ -68,8 +70,7 @@ struct LikelihoodBound {
 };
 
 struct LogRange {
-  double low = 0.0;
-  std::optional<double> high;  ///< absent: without end
+  std::optional<double> low, high;  ///< absent: without end on that side
 };
 
 /// Median and central interval of a quantity that follows from the effect.

@@ -4,7 +4,7 @@
 
 #include <fmt/format.h>
 #include <unistd.h>
-#include <CLI/App.hpp>
+#include <CLI/CLI.hpp>
 
 #include <algorithm>
 #include <string>

@@ -24,7 +24,9 @@ Outcome<RecordedRun> gather(const std::string& text, Options options) {
   auto run = read_result(text, options.file);
   if (!run.ok()) return run;
   for (const std::string& problem : build_on(run.value->options, options)) {
-    run.diagnostics.push_back({Severity::error, "options", {}, problem, ""});
+    Diagnostic& diagnostic = run.diagnostics.emplace_back();
+    diagnostic.code = "options";
+    diagnostic.what = problem;
     run.value.reset();
   }
   if (run.ok()) run.value->options = options.analysis;

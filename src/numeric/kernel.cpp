@@ -85,10 +85,11 @@ double DensityKernel::at(double t, double ncp) const {
               : remainder_small(*remainder_.local, remainder_theta_edges(), node.c));
 }
 
-void DensityKernel::add(double t, double ncp_per_mean, std::span<const double> means,
-                        std::span<double> out) const {
+void DensityKernel::add(double t, double ncp_per_mean, std::span<const double> means, std::span<double> out,
+                        double shift) const {
   DensityConstants k = constants_;
   set_t(k, t);
+  k.constant += shift;
   if (!remainder_.local)
     add_large(k, remainder_.single.data(), remainder_.terms, ncp_per_mean, means.data(), out.data(),
               means.size());

@@ -17,8 +17,9 @@ class DensityKernel {
   /// log f(t; df, ncp).
   [[nodiscard]] double at(double t, double ncp) const;
 
-  /// out[j] += log f(t; df, ncp_per_mean·means[j]).
-  void add(double t, double ncp_per_mean, std::span<const double> means, std::span<double> out) const;
+  /// out[j] += shift + log f(t; df, ncp_per_mean·means[j]).
+  void add(double t, double ncp_per_mean, std::span<const double> means, std::span<double> out,
+           double shift = 0.0) const;
 
   /// out[j] = log f(ts[j]; df, ncp).
   void over_t(std::span<const double> ts, double ncp, std::span<double> out) const;

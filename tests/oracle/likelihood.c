@@ -1,0 +1,93 @@
+/* The inner loops of likelihood.py in 80-bit arithmetic: the logarithm of
+ *   mass(z) = int exp(df (log(1+d) - d) - w0^2 d^2 / 2 + u) du,  d = e^u - 1,  w0 = sqrt(df) e^z,
+ * tabulated, and the log likelihoods that follow from it. */
+#include <math.h>
+
+typedef long double ld;
+
+/* The trapezoid rule in u, from where nothing is left to where nothing is left. */
+static ld log_mass(ld nu, ld z) {
+  const ld w2 = nu * expl(2 * z), width = 1 / sqrtl(nu + 1 + w2);
+  const ld step =
+      width < 0.4L ? width / 4 : 0.1L; /* exp(-exp(2 u)) turns round at an imaginary part of pi/4 */
+  ld total = 0;
+  for (int side = -1; side <= 1; side += 2) {
+    for (long j = side < 0 ? 1 : 0;; ++j) {
+      const ld u = side * j * step, d = expm1l(u);
+      const ld term = expl(nu * (log1pl(d) - d) - w2 * d * d / 2 + u);
+      total += term;
+      if (term < 1e-24L * total) break;
+    }
+  }
+  return logl(total * step);
+}
+
+void tabulate(ld nu, int first, int pieces, int terms, ld piece, const ld* nodes, ld* values) {
+  for (int p = 0; p < pieces; ++p)
+    for (int k = 0; k < terms; ++k)
+      values[p * terms + k] = log_mass(nu, (first + p + 0.5L + nodes[k] / 2) * piece);
+}
+
+typedef struct {
+  ld nu, constant, piece;
+  int first, pieces, terms;
+  const ld* coefficients;
+} table;
+
+/* log f(t; nu, ncp); -1e18 beyond the table, where the density is smaller than any that counts. */
+static ld log_density(const table* k, ld t, ld ncp) {
+  const ld x2 = t * t / k->nu, y = ncp * t / sqrtl(k->nu * (1 + x2));
+  const ld z = asinhl(y / (2 * sqrtl(k->nu))), place = z / k->piece - k->first;
+  const int p = (int)floorl(place);
+  if (!(place >= 0) || p >= k->pieces) return -1e18L;
+  const ld* c = k->coefficients + p * k->terms;
+  const ld x = 2 * (place - p) - 1;
+  ld last = 0, value = c[k->terms - 1];
+  for (int m = k->terms - 2; m > 0; --m) {
+    const ld next = 2 * x * value - last + c[m];
+    last = value;
+    value = next;
+  }
+  value = x * value - last + c[0];
+  value += (k->nu + 1) * z + logl(k->nu) / 2 + k->nu * expm1l(2 * z) / 2 - k->nu / 2;
+  return k->constant - ncp * ncp / 2 - (k->nu + 1) / 2 * log1pl(x2) + value;
+}
+
+static ld log_add(ld a, ld b) { return a > b ? a + log1pl(expl(b - a)) : b + log1pl(expl(a - b)); }
+
+void add_exact(const table* k, ld t, ld n, int folded, long count, const ld* mean, const ld* spread,
+               ld* out) {
+  for (long i = 0; i < count; ++i) {
+    const ld s = sqrtl(1 + n * spread[i] * spread[i]), ncp = mean[i] * sqrtl(n) / s;
+    ld value = log_density(k, t / s, ncp);
+    if (folded) value = log_add(value, log_density(k, -t / s, ncp));
+    out[i] += value - logl(s);
+  }
+}
+
+void add_normal(ld estimate, ld se, int folded, long count, const ld* mean, const ld* spread, ld* out) {
+  const ld log_two_pi = logl(2 * 3.14159265358979323846264338327950288L);
+  for (long i = 0; i < count; ++i) {
+    const ld variance = se * se + spread[i] * spread[i];
+    const ld near = (estimate - mean[i]) * (estimate - mean[i]) / (2 * variance);
+    const ld far = (estimate + mean[i]) * (estimate + mean[i]) / (2 * variance);
+    out[i] += (folded ? log_add(-near, -far) : -near) - (log_two_pi + logl(variance)) / 2;
+  }
+}
+
+static double normal_cdf(double z) { return erfc(-z * 0.70710678118654752440) / 2; }
+
+/* ratio: w / sqrt(df) at the nodes of the chi-distributed scale, weight: their probabilities. */
+void add_band(int nodes, const double* ratio, const double* weight, int bands, const double* low,
+              const double* high, ld n, long count, const ld* mean, const ld* spread, ld* out) {
+  for (long i = 0; i < count; ++i) {
+    const double s = (double)sqrtl(1 + n * spread[i] * spread[i]), shift = (double)(mean[i] * sqrtl(n)) / s;
+    double total = 0;
+    for (int b = 0; b < bands; ++b)
+      for (int j = 0; j < nodes; ++j) {
+        const double a = low[b] * ratio[j] / s - shift, c = high[b] * ratio[j] / s - shift;
+        total += weight[j] * (a > 0 ? normal_cdf(-a) - normal_cdf(-c) : normal_cdf(c) - normal_cdf(a));
+      }
+    out[i] += total > 0 ? logl(total) : -1e18L;
+  }
+}

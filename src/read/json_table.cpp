@@ -170,9 +170,19 @@ class TableBuilder {
   bool input() {
     return json_.object([&](const std::string& key, const Place&) {
       if (key == "decimal_comma") return decimal_comma();
+      if (key == "columns" && json_.peek() == '[') return column_order();
       if (key != "rows" || json_.peek() != '[') return json_.skip_value(2);
       found_rows_ = true;
       return json_.array([&] { return json_.peek() == '{' ? result_row() : not_a_row("an object"); });
+    });
+  }
+
+  // The columns of the original file, in its order.
+  bool column_order() {
+    return json_.array([&] {
+      const Place at = json_.place();
+      std::string name;
+      return json_.peek() == '"' ? json_.string(name) && column(name, at) >= 0 : json_.skip_value(3);
     });
   }
 
@@ -228,7 +238,7 @@ Outcome<Table> read_json(std::string_view text, const std::string& file) {
     problems.error("no-rows", {file, 1, 1}, "There are no studies in this file.",
                    "Write an object for each study into the array.");
   }
-  if (!table.rows.empty()) check_names(table.names, places, problems);
+  if (whole && !table.names.empty()) check_names(table.names, places, problems);
   read_cells(table, builder.has_points(), problems);
   return finish(std::move(table), problems);
 }

@@ -80,10 +80,12 @@ bool Records::next(std::vector<Field>& fields) {
 
 void Records::record(std::vector<Field>& fields) {
   const std::size_t start = at_;
+  locator_.advance_to(start);
+  const std::size_t line = locator_.line();
   while (true) {
     fields.push_back(at_ < text_.size() && text_[at_] == quote ? quoted_field() : plain_field());
     if (stopped_) return;
-    if (too_long(start)) {
+    if (too_long(start, line)) {
       fields.clear();
       return;
     }
@@ -95,13 +97,13 @@ void Records::record(std::vector<Field>& fields) {
 }
 
 // The record is given up and the rest of its line skipped.
-bool Records::too_long(std::size_t start) {
+bool Records::too_long(std::size_t start, std::size_t line) {
   if (at_ - start <= longest_record) return false;
-  error(start, "line-too-long",
-        fmt::format("The line that begins here is longer than {} bytes.", with_commas(longest_record)),
-        "No row of a table is that long: check that the file has line ends and that quotes are closed.");
-  const std::size_t end = text_.find_first_of("\r\n", at_);
-  at_ = end == std::string_view::npos ? text_.size() : end;
+  problems_.error(
+      "line-too-long", {file_, line, 1},
+      fmt::format("The line that begins here is longer than {} bytes.", with_commas(longest_record)),
+      "No row of a table is that long: check that the file has line ends and that quotes are closed.");
+  at_ = std::min(text_.find_first_of("\r\n", at_), text_.size());
   skip_line_end();
   return true;
 }

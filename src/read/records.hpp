@@ -43,7 +43,7 @@ class Records {
   Field make(std::string_view text);
   bool at_line_end(std::size_t at) const;
   void skip_line_end();
-  bool too_long(std::size_t start);
+  bool too_long(std::size_t start, std::size_t line);
   void error(std::size_t at, const char* code, std::string what, std::string remedy);
   std::size_t find_field_end(std::size_t from) const;
 

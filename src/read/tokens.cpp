@@ -49,13 +49,19 @@ char level(char32_t c) {
   return minus ? '-' : '\0';
 }
 
-// `*`, `_`, `$`, `{`, `}`, `\`, `^` and the tags of italics, bold, sub- and superscript carry no meaning.
+// `*`, `_`, `$`, `{`, `}`, `\`, `^`, and the tags and commands of italics, bold, sub- and superscript carry
+// no meaning.
 std::size_t markup_length(std::string_view rest) {
+  constexpr std::array<std::string_view, 7> commands = {"\\textit", "\\textrm", "\\text", "\\emph",
+                                                        "\\mathit", "\\mathrm", "\\it "};
   constexpr std::array<std::string_view, 12> tags = {"<i>",   "</i>",   "<b>",      "</b>",
                                                      "<em>",  "</em>",  "<sub>",    "</sub>",
                                                      "<sup>", "</sup>", "<strong>", "</strong>"};
   for (const std::string_view tag : tags) {
     if (rest.substr(0, tag.size()) == tag) return tag.size();
+  }
+  for (const std::string_view command : commands) {
+    if (rest.substr(0, command.size()) == command) return command.size();
   }
   return std::string_view("*_${}\\^").find(rest.front()) == std::string_view::npos ? 0 : 1;
 }

@@ -97,8 +97,8 @@ std::string general_help(std::size_t width) {
 }
 
 std::string command_help(const CommandInfo& command, std::size_t width) {
-  std::string text = fmt::format("steelyard {}: {}\n\nUsage: steelyard {} [FILE] [OPTIONS]\n\n", command.name,
-                                 command.summary, command.name);
+  std::string text = wrapped(fmt::format("steelyard {}: {}", command.name, command.summary), 0, width) +
+                     fmt::format("\nUsage: steelyard {} [FILE] [OPTIONS]\n\n", command.name);
   text += wrapped(command.description, 0, width);
   text += "\n  FILE\n" + wrapped(file_meaning, 6, width) + "\nOptions:\n";
   for (const OptionInfo* option : options_of(command.id)) text += option_help(*option, width);

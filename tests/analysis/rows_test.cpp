@@ -37,10 +37,10 @@ TEST_CASE("rows are left out by label or number", "[analysis]") {
 
 TEST_CASE("a label that names no row is an error with a suggestion", "[analysis]") {
   const Table table = table_of(studies);
-  const auto kept = rows_without(table, std::vector<std::string>{"Alfa", "row 9"});
+  const auto kept = rows_without(table, std::vector<std::string>{"Alhpa", "row 9"});
   CHECK_FALSE(kept.ok());
   REQUIRE(kept.diagnostics.size() == 2);
-  CHECK(kept.diagnostics[0].what == "No study is called \"Alfa\", so it can't be left out.");
+  CHECK(kept.diagnostics[0].what == "No study is called \"Alhpa\", so it can't be left out.");
   CHECK(kept.diagnostics[0].remedy == "Did you mean \"Alpha\"?");
   CHECK(kept.diagnostics[1].code == "without-unknown");
 }

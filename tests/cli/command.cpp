@@ -86,7 +86,7 @@ std::vector<std::string> Folder::names() const {
   return found;
 }
 
-Ran steelyard(const std::vector<std::string>& arguments, const Setting& setting) {
+Ran run_command(const std::vector<std::string>& arguments, const Setting& setting) {
   std::vector<std::string> words = {STEELYARD_COMMAND};
   words.insert(words.end(), arguments.begin(), arguments.end());
   return run(std::move(words), setting);

@@ -38,7 +38,7 @@ class Folder {
 };
 
 /// Runs `steelyard` with these arguments.
-[[nodiscard]] Ran steelyard(const std::vector<std::string>& arguments, const Setting& setting = {});
+[[nodiscard]] Ran run_command(const std::vector<std::string>& arguments, const Setting& setting = {});
 /// Runs a line of sh in which $STEELYARD is the command.
 [[nodiscard]] Ran shell(const std::string& line, const Setting& setting = {});
 

@@ -34,7 +34,7 @@ TEST_CASE("a full disk is exit status 3, with a message", "[cli][faults]") {
   const Ran text = shell("$STEELYARD pool '" + demo + "' > /dev/full");
   CHECK(text.status == 3);
   CHECK_THAT(text.err, Catch::Contains("Standard output can't be written: no space is left on the device."));
-  const Ran json = steelyard({"pool", demo, "--json", "/dev/full"});
+  const Ran json = run_command({"pool", demo, "--json", "/dev/full"});
   CHECK(json.status == 3);
   CHECK_THAT(json.err, Catch::Contains("\"/dev/full\" can't be written: no space is left on the device."));
 }
@@ -53,11 +53,11 @@ TEST_CASE("a file that grows too large leaves the old one whole", "[cli][faults]
 
 TEST_CASE("targets that can't be written are reported before the work", "[cli][faults]") {
   const Folder folder;
-  const Ran in_folder = steelyard({"pool", demo, "--svg", folder.path(".")});
+  const Ran in_folder = run_command({"pool", demo, "--svg", folder.path(".")});
   CHECK(in_folder.status == 3);
   CHECK(in_folder.out.empty());
   CHECK_THAT(in_folder.err, Catch::Contains("can't be written: it is a folder."));
-  const Ran nowhere = steelyard({"pool", demo, "--svg", folder.path("no/such/folder.svg")});
+  const Ran nowhere = run_command({"pool", demo, "--svg", folder.path("no/such/folder.svg")});
   CHECK(nowhere.status == 3);
   CHECK_THAT(nowhere.err, Catch::Contains("there is no such file or folder."));
   CHECK(folder.names().empty());
@@ -92,7 +92,7 @@ TEST_CASE("an unreadable input is exit status 3", "[cli][faults]") {
 TEST_CASE("the input is never overwritten", "[cli][faults]") {
   const Folder folder;
   const std::string file = folder.file("studies.csv", bytes_of(demo));
-  const Ran ran = steelyard({"pool", file, "--json", folder.path("./studies.csv")});
+  const Ran ran = run_command({"pool", file, "--json", folder.path("./studies.csv")});
   CHECK(ran.status == 3);
   CHECK_THAT(ran.err, Catch::Contains("is the file that is read"));
   CHECK(folder.read("studies.csv") == bytes_of(demo));
@@ -103,7 +103,7 @@ TEST_CASE("a link is followed, and the mode of a replaced file is kept", "[cli][
   const std::string target = folder.file("real.json", "old");
   chmod(target.c_str(), 0640);
   REQUIRE(symlink("real.json", folder.path("link.json").c_str()) == 0);
-  CHECK(steelyard({"pool", demo, "--json", folder.path("link.json")}).status == 0);
+  CHECK(run_command({"pool", demo, "--json", folder.path("link.json")}).status == 0);
   struct stat status {};
   REQUIRE(lstat(folder.path("link.json").c_str(), &status) == 0);
   CHECK(S_ISLNK(status.st_mode));
@@ -166,22 +166,22 @@ TEST_CASE("two runs that write one file leave it whole", "[cli][faults]") {
 
 TEST_CASE("a message can't drive the terminal", "[cli][faults]") {
   const Folder folder;
-  const Ran ran = steelyard({"pool", folder.file("x.csv", "study,t,n1,n2\nA,\x1b[31mred\x07,20,20\n")});
+  const Ran ran = run_command({"pool", folder.file("x.csv", "study,t,n1,n2\nA,\x1b[31mred\x07,20,20\n")});
   CHECK(ran.status == 1);
   CHECK(ran.err.find('\x1b') == std::string::npos);
   CHECK(ran.err.find('\x07') == std::string::npos);
-  CHECK(steelyard({"\x1b[2J"}).err.find('\x1b') == std::string::npos);
+  CHECK(run_command({"\x1b[2J"}).err.find('\x1b') == std::string::npos);
 }
 
 TEST_CASE("locale and clock change nothing", "[cli][faults]") {
-  const Ran plain = steelyard({"pool", demo, "--json", "-"});
+  const Ran plain = run_command({"pool", demo, "--json", "-"});
   REQUIRE(plain.status == 0);
   for (const std::string locale : {"de_DE.UTF-8", "tr_TR.UTF-8", "ar_EG.UTF-8", "C.UTF-8", "nonsense", ""}) {
     Setting setting;
     setting.environment = {{"LC_ALL", locale}, {"LANG", locale}};
-    CHECK(steelyard({"pool", demo, "--json", "-"}, setting).out == plain.out);
+    CHECK(run_command({"pool", demo, "--json", "-"}, setting).out == plain.out);
   }
   Setting zone;
   zone.environment = {{"TZ", "Pacific/Kiritimati"}, {"SOURCE_DATE_EPOCH", "0"}};
-  CHECK(steelyard({"pool", demo, "--json", "-"}, zone).out == plain.out);
+  CHECK(run_command({"pool", demo, "--json", "-"}, zone).out == plain.out);
 }

@@ -26,12 +26,12 @@ bool plain_ascii(const std::string& text) {
 }  // namespace
 
 TEST_CASE("the version and the help go to standard output", "[cli]") {
-  const Ran version = steelyard({"--version"});
+  const Ran version = run_command({"--version"});
   CHECK(version.status == 0);
   CHECK(version.out == "steelyard " STEELYARD_VERSION "\n");
   for (const auto& arguments :
        {std::vector<std::string>{"--help"}, {"pool", "--help"}, {"help", "check"}, {"check", "-h"}}) {
-    const Ran help = steelyard(arguments);
+    const Ran help = run_command(arguments);
     CHECK(help.status == 0);
     CHECK(help.err.empty());
     CHECK_THAT(help.out, Catch::Contains("Examples:") && Catch::Contains("Exit status:"));
@@ -39,7 +39,7 @@ TEST_CASE("the version and the help go to standard output", "[cli]") {
 }
 
 TEST_CASE("pool prints the answer and nothing on standard error", "[cli]") {
-  const Ran ran = steelyard({"pool", demo});
+  const Ran ran = run_command({"pool", demo});
   CHECK(ran.status == 0);
   CHECK(ran.err.empty());
   CHECK_THAT(ran.out, Catch::Contains("Alder 1994") && Catch::Contains("decibans"));
@@ -48,9 +48,9 @@ TEST_CASE("pool prints the answer and nothing on standard error", "[cli]") {
 TEST_CASE("standard input does as well as a file", "[cli]") {
   Setting setting;
   setting.input = bytes_of(demo);
-  const Ran named = steelyard({"pool", demo, "--json", "-"});
-  const Ran piped = steelyard({"pool", "-", "--json", "-"}, setting);
-  const Ran silent = steelyard({"pool", "--json", "-"}, setting);
+  const Ran named = run_command({"pool", demo, "--json", "-"});
+  const Ran piped = run_command({"pool", "-", "--json", "-"}, setting);
+  const Ran silent = run_command({"pool", "--json", "-"}, setting);
   CHECK(piped.status == 0);
   CHECK(piped.out == silent.out);
   auto a = nlohmann::json::parse(named.out);
@@ -65,7 +65,7 @@ TEST_CASE("standard input does as well as a file", "[cli]") {
 
 TEST_CASE("with --json - the result is the only thing on standard output", "[cli]") {
   for (const std::string command : {"pool", "check"}) {
-    const Ran ran = steelyard({command, demo, "--json", "-"});
+    const Ran ran = run_command({command, demo, "--json", "-"});
     CHECK(ran.status == 0);
     CHECK(nlohmann::json::parse(ran.out)["command"] == command);
   }
@@ -74,7 +74,7 @@ TEST_CASE("with --json - the result is the only thing on standard output", "[cli
 TEST_CASE("files are written beside the text", "[cli]") {
   const Folder folder;
   const Ran ran =
-      steelyard({"pool", demo, "--svg", folder.path("forest.svg"), "--json", folder.path("result.json")});
+      run_command({"pool", demo, "--svg", folder.path("forest.svg"), "--json", folder.path("result.json")});
   CHECK(ran.status == 0);
   CHECK_FALSE(ran.out.empty());
   CHECK(folder.names() == std::vector<std::string>{"forest.svg", "result.json"});
@@ -84,20 +84,20 @@ TEST_CASE("files are written beside the text", "[cli]") {
 
 TEST_CASE("text is ASCII unless the locale is UTF-8, and never coloured into a file", "[cli]") {
   for (const std::string command : {"pool", "check"}) {
-    CHECK(plain_ascii(steelyard({command, demo}).out));
+    CHECK(plain_ascii(run_command({command, demo}).out));
     Setting utf8;
     utf8.environment = {{"LANG", "C.UTF-8"}};
-    const std::string text = steelyard({command, demo}, utf8).out;
+    const std::string text = run_command({command, demo}, utf8).out;
     CHECK(text.find('\x1b') == std::string::npos);
     Setting posix;
     posix.environment = {{"LANG", "de_DE.UTF-8"}, {"LC_ALL", "C"}};
-    CHECK(plain_ascii(steelyard({command, demo}, posix).out));
-    CHECK(steelyard({command, demo, "--glyphs", "unicode"}).out == text);
+    CHECK(plain_ascii(run_command({command, demo}, posix).out));
+    CHECK(run_command({command, demo, "--glyphs", "unicode"}).out == text);
   }
 }
 
 TEST_CASE("colour can be forced, and NO_COLOR is obeyed on a terminal", "[cli]") {
-  CHECK_THAT(steelyard({"pool", demo, "--colour", "always"}).out, Catch::Contains("\x1b["));
+  CHECK_THAT(run_command({"pool", demo, "--colour", "always"}).out, Catch::Contains("\x1b["));
   // `script` gives the command a terminal.
   const std::string line = "script -qec \"$STEELYARD pool '" + demo + "'\" /dev/null < /dev/null";
   CHECK_THAT(shell(line).out, Catch::Contains("\x1b["));
@@ -110,8 +110,8 @@ TEST_CASE("lines keep to the width", "[cli]") {
   for (const std::string width : {"60", "80", "132"}) {
     Setting setting;
     setting.environment = {{"COLUMNS", width}};
-    const std::string text = steelyard({"pool", demo}, setting).out;
-    CHECK(steelyard({"pool", demo, "--width", width}).out == text);
+    const std::string text = run_command({"pool", demo}, setting).out;
+    CHECK(run_command({"pool", demo, "--width", width}).out == text);
     std::size_t start = 0;
     for (std::size_t end = 0; (end = text.find('\n', start)) != std::string::npos; start = end + 1) {
       INFO(text.substr(start, end - start));
@@ -123,24 +123,24 @@ TEST_CASE("lines keep to the width", "[cli]") {
 TEST_CASE("--fail-on turns findings into exit status 4, after the result is written", "[cli]") {
   const Folder folder;
   const std::string file = folder.file("odd.csv", "study,n1,n2,t,p\nA,20,20,2.10,.003\nB,20,20,1.00,.32\n");
-  const Ran ran = steelyard({"pool", file, "--fail-on", "impossible", "--json", folder.path("r.json")});
+  const Ran ran = run_command({"pool", file, "--fail-on", "impossible", "--json", folder.path("r.json")});
   CHECK(ran.status == 4);
   CHECK_FALSE(ran.out.empty());
   CHECK(nlohmann::json::parse(folder.read("r.json"))["studies"][0]["findings"].size() >= 1);
-  CHECK(steelyard({"check", file, "--fail-on", "impossible"}).status == 4);
-  CHECK(steelyard({"check", file}).status == 0);
+  CHECK(run_command({"check", file, "--fail-on", "impossible"}).status == 4);
+  CHECK(run_command({"check", file}).status == 0);
 }
 
 TEST_CASE("what is left out is in every output", "[cli]") {
-  const Ran text = steelyard({"pool", demo, "--without", "Alder 1994"});
+  const Ran text = run_command({"pool", demo, "--without", "Alder 1994"});
   CHECK(text.status == 0);
   CHECK_THAT(text.out, Catch::Contains("Alder 1994"));
   const auto result =
-      nlohmann::json::parse(steelyard({"pool", demo, "--without", "Alder 1994", "--json", "-"}).out);
+      nlohmann::json::parse(run_command({"pool", demo, "--without", "Alder 1994", "--json", "-"}).out);
   CHECK(result["left_out"] == nlohmann::json::array({"Alder 1994"}));
   CHECK(result["studies"].size() + 1 == result["input"]["rows"].size());
-  CHECK_THAT(steelyard({"check", demo, "--without", "row 1"}).out, Catch::Contains("Alder 1994"));
-  const Ran wrong = steelyard({"pool", demo, "--without", "Alder 1995"});
+  CHECK_THAT(run_command({"check", demo, "--without", "row 1"}).out, Catch::Contains("Alder 1994"));
+  const Ran wrong = run_command({"pool", demo, "--without", "Alder 1995"});
   CHECK(wrong.status == 1);
   CHECK_THAT(wrong.err, Catch::Contains("Did you mean \"Alder 1994\"?"));
 }
@@ -148,24 +148,24 @@ TEST_CASE("what is left out is in every output", "[cli]") {
 TEST_CASE("a run is repeated from its own result", "[cli]") {
   const Folder folder;
   const std::string first = folder.path("first.json");
-  const Ran made = steelyard({"pool", demo, "--level", "0.9", "--direction", "greater", "--without",
-                              "Gorse 2012", "--effect-prior", "normal(0.1, 0.6)", "--json", first});
+  const Ran made = run_command({"pool", demo, "--level", "0.9", "--direction", "greater", "--without",
+                                "Gorse 2012", "--effect-prior", "normal(0.1, 0.6)", "--json", first});
   REQUIRE(made.status == 0);
-  const Ran again = steelyard({"pool", "--from", first, "--json", "-"});
+  const Ran again = run_command({"pool", "--from", first, "--json", "-"});
   CHECK(again.status == 0);
   CHECK(again.out == folder.read("first.json"));
   const auto changed =
-      nlohmann::json::parse(steelyard({"pool", "--from", first, "--level", "0.5", "--json", "-"}).out);
+      nlohmann::json::parse(run_command({"pool", "--from", first, "--level", "0.5", "--json", "-"}).out);
   CHECK(changed["options"]["level"] == 0.5);
   CHECK(changed["priors"]["direction"] == "greater");
-  CHECK(steelyard({"pool", "--from", demo}).status == 1);
+  CHECK(run_command({"pool", "--from", demo}).status == 1);
 }
 
 TEST_CASE("legal oddities are pooled, each with its caution", "[cli]") {
   const Folder folder;
   for (const std::string row : {"A,20,20,50,", "A,1,20,2.1,", "A,20,20,,.000"}) {
     const Ran ran =
-        steelyard({"pool", folder.file("odd.csv", "study,n1,n2,t,p\n" + row + "\n"), "--json", "-"});
+        run_command({"pool", folder.file("odd.csv", "study,n1,n2,t,p\n" + row + "\n"), "--json", "-"});
     INFO(row << "\n" << ran.err);
     REQUIRE(ran.status == 0);
     const auto result = nlohmann::json::parse(ran.out);
@@ -174,11 +174,11 @@ TEST_CASE("legal oddities are pooled, each with its caution", "[cli]") {
 }
 
 TEST_CASE("data sets of the project can be pooled", "[cli]") {
-  CHECK(steelyard({"pool", dataset("no-effect.csv")}).status == 0);
-  CHECK(steelyard({"pool", dataset("heterogeneous.csv")}).status == 0);
-  CHECK(steelyard({"pool", dataset("sleep.csv")}).status == 0);
-  CHECK(steelyard({"pool", dataset("eight-schools.csv")}).status == 1);
-  CHECK(steelyard({"pool", dataset("eight-schools.csv"), "--effect-prior", "normal(0, 15)", "--spread-prior",
-                   "half-normal(10)"})
+  CHECK(run_command({"pool", dataset("no-effect.csv")}).status == 0);
+  CHECK(run_command({"pool", dataset("heterogeneous.csv")}).status == 0);
+  CHECK(run_command({"pool", dataset("sleep.csv")}).status == 0);
+  CHECK(run_command({"pool", dataset("eight-schools.csv")}).status == 1);
+  CHECK(run_command({"pool", dataset("eight-schools.csv"), "--effect-prior", "normal(0, 15)",
+                     "--spread-prior", "half-normal(10)"})
             .status == 0);
 }

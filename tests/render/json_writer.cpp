@@ -8,7 +8,7 @@
 #include <string>
 
 using steelyard::Sink;
-using steelyard::json::quoted;
+
 using steelyard::json::Writer;
 
 namespace {
@@ -45,16 +45,17 @@ TEST_CASE("what is not finite is null", "[json]") {
 TEST_CASE("texts come back as they were, whatever stands in them", "[json]") {
   const std::string hostile =
       "a\"b\\c\n\t\r\x01\x1f\x7f </script> \xc3\xa9 \xe4\xb8\xad \xf0\x9f\x99\x82 ]]>";
-  CHECK(nlohmann::json::parse(quoted(hostile)).get<std::string>() == hostile);
+  CHECK(nlohmann::json::parse(steelyard::json::quoted(hostile)).get<std::string>() == hostile);
 }
 
 TEST_CASE("invalid UTF-8 becomes U+FFFD, so that the document stays valid", "[json]") {
   const std::string mark = "\xEF\xBF\xBD";
-  CHECK(quoted("a\xff") == "\"a" + mark + "\"");
-  CHECK(quoted("\xc0\xaf") == "\"" + mark + mark + "\"");                        // overlong
-  CHECK(quoted("\xed\xa0\x80") == "\"" + mark + mark + mark + "\"");             // a surrogate
-  CHECK(quoted("\xf4\x90\x80\x80") == "\"" + mark + mark + mark + mark + "\"");  // beyond U+10FFFF
-  CHECK(quoted("\xe4\xb8") == "\"" + mark + mark + "\"");                        // cut short
+  CHECK(steelyard::json::quoted("a\xff") == "\"a" + mark + "\"");
+  CHECK(steelyard::json::quoted("\xc0\xaf") == "\"" + mark + mark + "\"");             // overlong
+  CHECK(steelyard::json::quoted("\xed\xa0\x80") == "\"" + mark + mark + mark + "\"");  // a surrogate
+  CHECK(steelyard::json::quoted("\xf4\x90\x80\x80") ==
+        "\"" + mark + mark + mark + mark + "\"");                           // beyond U+10FFFF
+  CHECK(steelyard::json::quoted("\xe4\xb8") == "\"" + mark + mark + "\"");  // cut short
 }
 
 TEST_CASE("the outer levels stand one member a line, the inner ones on one line", "[json]") {

@@ -60,6 +60,11 @@ Part<Input> input_part() {
                 {"sha256", "checksum of the bytes as read", text<Input>(&Input::sha256)},
                 {"decimal_comma", "true when the file writes one and a half as 1,5",
                  boolean<Input>([](const Input& input) { return input.table.style.decimal_comma; })},
+                {"columns", "names of the columns, in the order of the file",
+                 array<Input>(text<std::string>([](const std::string& s) { return std::string_view(s); }),
+                              [](const Input& input) -> const std::vector<std::string>& {
+                                return input.table.names;
+                              })},
                 {"rows", "all rows of the file, those left out included",
                  array<Input>(row_part(), [](const Input& input) { return RowRange(input.table); })}});
 }

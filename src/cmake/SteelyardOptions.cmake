@@ -13,9 +13,11 @@ target_compile_options(steelyard_options INTERFACE
   $<$<AND:$<CXX_COMPILER_ID:GNU>,$<VERSION_LESS:$<CXX_COMPILER_VERSION>,13>>:-Wno-restrict>
   $<$<BOOL:${STEELYARD_WERROR}>:-Werror>
   $<$<BOOL:${STEELYARD_SANITIZE}>:-fsanitize=address,undefined -fno-sanitize-recover=all -fno-omit-frame-pointer>
+  $<$<BOOL:${STEELYARD_FUZZ}>:-fsanitize=fuzzer-no-link,address,undefined -fno-sanitize-recover=all -fno-omit-frame-pointer>
   $<$<BOOL:${STEELYARD_COVERAGE}>:--coverage -fprofile-update=atomic>)
 target_link_options(steelyard_options INTERFACE
   $<$<BOOL:${STEELYARD_SANITIZE}>:-fsanitize=address,undefined>
+  $<$<BOOL:${STEELYARD_FUZZ}>:-fsanitize=address,undefined>
   $<$<BOOL:${STEELYARD_COVERAGE}>:--coverage>)
 set(CMAKE_CXX_EXTENSIONS OFF)
 set(CMAKE_POSITION_INDEPENDENT_CODE ON)

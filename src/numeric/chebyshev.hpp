@@ -54,6 +54,7 @@ class LogCurve {
     double noise = 0.0;                     ///< rounding noise of the function: no use going below
     double log_peak = 0.0;                  ///< largest value of function + weight, about
     const BlockFunction* weight = nullptr;  ///< log of what exp(function) will be multiplied with
+    double loosest = 1e-5;                  ///< largest error allowed anywhere, however small the integrand
     std::size_t most_panels = 200;
   };
 

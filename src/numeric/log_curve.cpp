@@ -12,10 +12,6 @@ namespace {
 
 constexpr std::size_t N = chebyshev_points;
 
-/// The largest error that is tolerated anywhere, however small the integrand: the curve must stay a
-/// picture of the function.
-constexpr double loosest = 1e-5;
-
 double allowed_error(const LogCurve::Need& need, const ChebyshevArray& x, const ChebyshevArray& values) {
   ChebyshevArray weighted = values;
   if (need.weight != nullptr) {
@@ -25,7 +21,7 @@ double allowed_error(const LogCurve::Need& need, const ChebyshevArray& x, const 
   }
   const double top = *std::max_element(weighted.begin(), weighted.end());
   const double slack = std::exp(std::clamp(need.log_peak - top, 0.0, 60.0));
-  return std::max(need.noise, std::min(loosest, need.tolerance * slack));
+  return std::max(need.noise, std::min(need.loosest, need.tolerance * slack));
 }
 
 }  // namespace

@@ -92,10 +92,52 @@ numeric::DensityCurve effect_density_random(const RandomMarginal& random, const 
     }
   };
   const Row& main = heaviest(rows);
+  Neighbourhood where{low, high, {}};
+  add_flanks(where.look, main.window.best, main.window.width, low, high);
+  add_prior_marks(where.look, prior.shape(), high - low);
+  return through_logarithm(density, where);
+}
+
+numeric::DensityCurve through_logarithm(const numeric::BlockFunction& density, const Neighbourhood& where) {
+  const numeric::BlockFunction log_density = [&density](std::span<const double> x, std::span<double> out) {
+    constexpr std::size_t block = numeric::chebyshev_points;
+    for (std::size_t first = 0; first < x.size(); first += block) {
+      const std::size_t n = std::min(block, x.size() - first);
+      density(x.subspan(first, n), out.subspan(first, n));
+    }
+    // Far out the weighed sum may cross zero by rounding.
+    for (double& value : out) value = std::log(std::max(value, 1e-300));
+  };
+  SearchSpace space;
+  space.low = where.low;
+  space.high = where.high;
+  space.start = where.look;
+  space.drop = 21.5;  // what is left out holds less than 1e-9
+  space.log_integrand = log_density;
+  const Window window = find_window(space);
+  std::vector<double> wanted;
+  for (double offset = 9.0; offset * window.width < window.high - window.low; offset *= 4.0) {
+    wanted.push_back(window.best - offset * window.width);
+    wanted.push_back(window.best + offset * window.width);
+  }
+  numeric::LogCurve::Need need;
+  need.tolerance = 3e-9;
+  need.noise = 1e-11;
+  need.loosest = 1e-2;
+  need.log_peak = window.log_best;
+  const numeric::LogCurve curve(log_density, merge_marks({window.low, window.high}, wanted, window.width),
+                                need);
+  const numeric::BlockFunction smooth = [&curve](std::span<const double> x, std::span<double> out) {
+    // DensityCurve asks for points of one panel at a time, and its panels end where the curve's do.
+    numeric::LogCurve::evaluate(curve.panel_at(0.5 * (x.front() + x.back())), x.data(), out.data(), x.size());
+    numeric::exp_shifted(out.data(), 0.0, out.size());
+  };
+  std::vector<double> edges;
+  for (const auto& panel : curve.panels()) edges.push_back(panel.low);
+  edges.push_back(curve.high());
   std::vector<double> marks;
-  add_flanks(marks, main.window.best, main.window.width, low, high);
-  add_prior_marks(marks, prior.shape(), high - low);
-  return {density, merge_marks({low, high}, marks, 0.1 * std::min(main.window.width, prior.shape().scale))};
+  add_flanks(marks, window.best, window.width, window.low, window.high);
+  return {smooth, merge_marks(edges, marks, 0.1 * window.width), 1e-9};
 }
 
 numeric::DensityCurve spread_density(const RandomMarginal& random, const SpreadPrior& prior) {

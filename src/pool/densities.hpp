@@ -26,6 +26,16 @@ namespace steelyard::pool_room {
 [[nodiscard]] numeric::DensityCurve own_effect_density(const RandomMarginal& random, const PriorBlock& prior,
                                                        const Field& field, std::optional<std::size_t> study);
 
+/// Where a density may live, and points from which every feature of it can be found.
+struct Neighbourhood {
+  double low, high;
+  std::vector<double> look;
+};
+
+/// A density that is dear to evaluate: its logarithm is interpolated on few points, the curve made from that.
+[[nodiscard]] numeric::DensityCurve through_logarithm(const numeric::BlockFunction& density,
+                                                      const Neighbourhood& where);
+
 /// A finite mixture of densities.
 class Mixture {
  public:

@@ -2,6 +2,7 @@
 #include <algorithm>
 #include <array>
 #include <cmath>
+#include <functional>
 #include <numbers>
 
 #include "numeric/quadrature.hpp"
@@ -13,14 +14,20 @@ namespace steelyard::pool_room {
 
 namespace {
 
-constexpr double least_weight = 1e-11;
+constexpr double least_weight = 1e-10;
 
-/// Of a row: what the convolution with Normal(0, τ²) needs.
+/// How a row's density is convolved with Normal(0, τ²).
+enum class Way {
+  nodes,    ///< τ is large beside the row's width: a sum over fixed nodes of the mean
+  clipped,  ///< τ is small and the row smooth: 31 Kronrod points over the part of the row within 7.5 τ
+  adaptive  ///< the row has structure finer than τ
+};
+
 struct Part {
   const Row* row = nullptr;
   double weight = 0.0;
-  bool wide = false;           ///< τ is large beside the row's own width: sum over fixed nodes
-  std::vector<double> centre;  ///< nodes of the mean, if wide
+  Way way = Way::adaptive;
+  std::vector<double> centre;  ///< nodes of the mean
   std::vector<double> mass;
 };
 
@@ -47,11 +54,20 @@ bool equally_spaced_nodes(const Row& row, const PriorBlock& prior, Part& part) {
   if (!(std::fabs(sum - 1.0) < 3e-9 && std::fabs(mean) < 3e-9 && std::fabs(square - 1.0) < 1e-8))
     return false;
   for (std::size_t j = 0; j < x.size(); ++j) {
-    if (g[j] < 1e-12) continue;
+    if (g[j] < 1e-10) continue;
     part.centre.push_back(x[j]);
     part.mass.push_back(g[j] / sum);
   }
   return true;
+}
+
+/// The nodes of the row's own quadrature.
+void own_nodes(const Row& row, Part& part) {
+  for (const Node& node : row.nodes) {
+    if (node.mass < 1e-12) continue;
+    part.centre.push_back(node.x);
+    part.mass.push_back(node.mass);
+  }
 }
 
 std::vector<Part> make_parts(const RandomMarginal& random, const PriorBlock& prior) {
@@ -62,26 +78,57 @@ std::vector<Part> make_parts(const RandomMarginal& random, const PriorBlock& pri
       part.weight = random.outer.panels[p].weight[j];
       if (std::fabs(part.weight) < least_weight) continue;
       part.row = &random.rows[p * numeric::chebyshev_points + j];
-      const double spread = part.row->spread;
-      if (spread > 0.6 * part.row->sd && equally_spaced_nodes(*part.row, prior, part)) {
-        part.wide = true;
-      } else if (spread > 1.5 * part.row->window.width && spread > 1.5 * part.row->sd) {
-        part.wide = true;
-        for (const Node& node : part.row->nodes) {
-          if (node.mass < 1e-13) continue;
-          part.centre.push_back(node.x);
-          part.mass.push_back(node.mass);
-        }
+      const Row& row = *part.row;
+      const double width = std::max(row.sd, std::min(row.window.width, 4.0 * row.sd));
+      if (row.spread > 0.6 * width) {
+        part.way = Way::nodes;
+        if (!equally_spaced_nodes(row, prior, part)) own_nodes(row, part);
+      } else if (row.curve.panels().size() == 1 && prior.shape().scale > 0.5 * row.sd) {
+        part.way = Way::clipped;
       }
       parts.push_back(std::move(part));
     }
   return parts;
 }
 
+using LogDivisor = std::function<void(std::span<const double>, std::span<double>)>;
+
+/// ∫ density of the row(m)/divisor(m)·Normal(x; m, τ²) dm for a block of x by a fixed rule.
+void convolve_clipped(const Row& row, const PriorBlock& prior, std::span<const double> x,
+                      std::span<double> out, const LogDivisor& log_divisor) {
+  constexpr double reach = 7.5;
+  const numeric::KronrodRule& rule = numeric::kronrod_rule();
+  const double front = 1.0 / (row.spread * std::sqrt(2.0 * std::numbers::pi));
+  for (std::size_t j = 0; j < x.size(); ++j) {
+    const double low = std::max(row.window.low, x[j] - reach * row.spread);
+    const double high = std::min(row.window.high, x[j] + reach * row.spread);
+    out[j] = 0.0;
+    if (!(low < high)) continue;
+    const double middle = low + 0.5 * (high - low);
+    const double half = 0.5 * (high - low);
+    numeric::KronrodArray m;
+    numeric::KronrodArray g;
+    for (std::size_t i = 0; i < m.size(); ++i) m[i] = middle + half * rule.x[i];
+    row.log_density(prior, m, g);
+    if (log_divisor) {
+      numeric::KronrodArray divisor{};
+      log_divisor(m, divisor);
+      for (std::size_t i = 0; i < m.size(); ++i) g[i] -= divisor[i];
+    }
+    for (std::size_t i = 0; i < m.size(); ++i) {
+      const double z = (x[j] - m[i]) / row.spread;
+      g[i] -= 0.5 * z * z;
+    }
+    numeric::exp_shifted(g.data(), 0.0, g.size());
+    double sum = 0.0;
+    for (std::size_t i = 0; i < m.size(); ++i) sum += rule.weight[i] * g[i];
+    out[j] = front * half * sum;
+  }
+}
+
 /// ∫ density of the row(m)·h(m)·Normal(x; m, τ²) dm for one x by adaptive quadrature over m, where the row
 /// has structure finer than the spread. `log_divisor`, if any, is subtracted from the log density.
-double convolve_at(const Row& row, const PriorBlock& prior, double x,
-                   const std::function<void(std::span<const double>, std::span<double>)>& log_divisor) {
+double convolve_at(const Row& row, const PriorBlock& prior, double x, const LogDivisor& log_divisor) {
   constexpr double reach = 8.0;
   const double low = std::max(row.window.low, x - reach * row.spread);
   const double high = std::min(row.window.high, x + reach * row.spread);
@@ -139,8 +186,6 @@ Extent extent(const std::vector<Part>& parts) {
   return out;
 }
 
-constexpr double flanks[] = {1.2, 2.7, 4.5, 7.0, 12.0, 24.0, 64.0, 256.0, 2048.0, 65536.0};
-
 }  // namespace
 
 numeric::DensityCurve own_effect_density(const RandomMarginal& random, const PriorBlock& prior,
@@ -160,7 +205,7 @@ numeric::DensityCurve own_effect_density(const RandomMarginal& random, const Pri
       first = false;
     }
     for (Part& part : parts) {
-      if (!part.wide) continue;
+      if (part.way != Way::nodes) continue;
       own.resize(part.centre.size());
       field.evaluate_one(*study, part.row->spread, part.centre, own);
       for (std::size_t b = 0; b < own.size(); ++b) part.mass[b] *= std::exp(-own[b] - level);
@@ -193,19 +238,24 @@ numeric::DensityCurve own_effect_density(const RandomMarginal& random, const Pri
     std::fill(out.begin(), out.end(), 0.0);
     for (const Part& part : parts) {
       const double front = part.weight / (part.row->spread * std::sqrt(2.0 * std::numbers::pi));
-      if (part.wide) {
+      if (part.way == Way::nodes) {
         std::fill(one.begin(), one.end(), 0.0);
         add_mixture(part.centre.data(), part.mass.data(), part.centre.size(), 1.0 / part.row->spread,
                     x.data(), one.data(), x.size());
         for (std::size_t j = 0; j < x.size(); ++j) out[j] += front * one[j];
         continue;
       }
-      std::function<void(std::span<const double>, std::span<double>)> divisor;
+      LogDivisor divisor;
       if (study)
         divisor = [&](std::span<const double> m, std::span<double> values) {
           field.evaluate_one(*study, part.row->spread, m, values);
           for (double& value : values) value += level;
         };
+      if (part.way == Way::clipped) {
+        convolve_clipped(*part.row, prior, x, one, divisor);
+        for (std::size_t j = 0; j < x.size(); ++j) out[j] += part.weight * one[j];
+        continue;
+      }
       for (std::size_t j = 0; j < x.size(); ++j)
         out[j] += part.weight * convolve_at(*part.row, prior, x[j], divisor);
     }
@@ -213,13 +263,12 @@ numeric::DensityCurve own_effect_density(const RandomMarginal& random, const Pri
     field.evaluate_one(*study, 0.0, x, {one.data(), x.size()});
     for (std::size_t j = 0; j < x.size(); ++j) out[j] *= std::exp(one[j] - log_front);
   };
-  std::vector<double> marks{where.best};
-  for (const double offset : flanks) {
-    marks.push_back(where.best - offset * where.width);
-    marks.push_back(where.best + offset * where.width);
+  Neighbourhood neighbourhood{where.low, where.high, {where.best}};
+  for (const double offset : {1.0, 2.5, 5.0, 9.0, 40.0, 300.0}) {
+    neighbourhood.look.push_back(where.best - offset * where.width);
+    neighbourhood.look.push_back(where.best + offset * where.width);
   }
-  std::erase_if(marks, [&](double x) { return !(x > where.low && x < where.high); });
-  return {density, merge_marks({where.low, where.high}, marks, 0.1 * where.width), 1e-9};
+  return through_logarithm(density, neighbourhood);
 }
 
 }  // namespace steelyard::pool_room

@@ -145,14 +145,57 @@ Summary PooledPosterior::effect_summary(Within within, double level) const {
   if (within == Within::random_effect && !pooled_->random) return missing();
   double order = within == Within::random_effect ? orders.effect_random : orders.effect_fixed;
   if (within == Within::average && pooled_->share_random > 0.0) order = std::min(order, orders.effect_random);
-  return summarize(effect_mixture(within), level, order);
+  Summary out = summarize(effect_mixture(within), level, order);
+  if (out.mean) out.mean = effect_moments(within).mean;
+  if (out.sd) out.sd = std::sqrt(effect_moments(within).variance);
+  return out;
+}
+
+PooledPosterior::Moments PooledPosterior::effect_moments(Within within) const {
+  // From the rows, whose windows reach further into the tails than the curves do.
+  double fixed = within == Within::average        ? pooled_->share_fixed
+                 : within == Within::fixed_effect ? 1.0
+                                                  : 0.0;
+  double random = within == Within::average ? pooled_->share_random : 1.0 - fixed;
+  Moments out{0.0, 0.0};
+  double square = 0.0;
+  // About one centre, so that large effects lose no digits of the variance.
+  const double centre = pooled_->fixed.row.mean;
+  const auto add = [&](double weight, const Row& row) {
+    const double d = row.mean - centre;
+    out.mean += weight * d;
+    square += weight * (row.sd * row.sd + d * d);
+  };
+  if (fixed > 0.0) add(fixed, pooled_->fixed.row);
+  if (random > 0.0 && pooled_->random) {
+    const RandomMarginal& r = *pooled_->random;
+    for (std::size_t p = 0; p < r.outer.panels.size(); ++p)
+      for (std::size_t j = 0; j < numeric::chebyshev_points; ++j)
+        add(random * r.outer.panels[p].weight[j], r.rows[p * numeric::chebyshev_points + j]);
+  }
+  out.variance = std::max(0.0, square - out.mean * out.mean);
+  out.mean += centre;
+  return out;
 }
 
 Summary PooledPosterior::new_study_summary(double level) const {
   const MomentOrders& orders = pooled_->orders;
   double order = orders.effect_fixed;
   if (pooled_->share_random > 0.0) order = std::min(order, orders.new_study);
-  return summarize(new_study_mixture(Within::average), level, order);
+  Summary out = summarize(new_study_mixture(Within::average), level, order);
+  if (!out.sd) return out;
+  // The mean is that of the mean effect; the variance adds E τ², whose heavy tail the curve of the spread
+  // follows further than that of the new effect does.
+  const Moments effect = effect_moments(Within::average);
+  out.mean = effect.mean;
+  double variance = effect.variance;
+  if (pooled_->share_random > 0.0) {
+    const SpreadAxis& axis = pooled_->random->axis;
+    variance += pooled_->share_random *
+                spread_curve()->expectation([&axis](double u) { return axis.spread(u) * axis.spread(u); });
+  }
+  out.sd = std::sqrt(variance);
+  return out;
 }
 
 Summary PooledPosterior::spread_summary(double level) const {

@@ -55,6 +55,11 @@ class PooledPosterior final : public Posterior {
   [[nodiscard]] const Pooled& pooled() const { return *pooled_; }
 
  private:
+  struct Moments {
+    double mean;
+    double variance;
+  };
+  [[nodiscard]] Moments effect_moments(Within within) const;
   [[nodiscard]] const numeric::DensityCurve* fixed_curve() const;
   [[nodiscard]] const numeric::DensityCurve* random_curve() const;
   [[nodiscard]] const numeric::DensityCurve* spread_curve() const;

@@ -45,6 +45,14 @@ std::vector<double> quadrature_breaks(const Row& row, const PriorShape& shape) {
 }  // namespace
 
 void Row::log_density(const PriorBlock& prior, std::span<const double> x, std::span<double> out) const {
+  if (curve.panels().size() == 1) {
+    numeric::LogCurve::evaluate(curve.panels().front(), x.data(), out.data(), x.size());
+    prior.add(x, out);
+    for (std::size_t j = 0; j < x.size(); ++j)
+      out[j] = x[j] >= curve.low() && x[j] <= curve.high() ? out[j] - log_integral
+                                                           : -std::numeric_limits<double>::infinity();
+    return;
+  }
   for (std::size_t j = 0; j < x.size(); ++j) {
     out[j] = curve(x[j]);
     if (std::isfinite(out[j])) prior.add({&x[j], 1}, {&out[j], 1});

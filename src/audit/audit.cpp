@@ -67,7 +67,8 @@ std::span<const Rule> registry() {
                                         rule_words(),
                                         rule_same_test(),
                                         rule_same_label(),
-                                        rule_label_case()};
+                                        rule_label_case(),
+                                        rule_far()};
   return all;
 }
 

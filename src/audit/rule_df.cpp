@@ -51,7 +51,8 @@ void check(const RowView& row) {
         "Check df and the sizes.");
     return;
   }
-  if (fractional || df >= limit->most / 2.0 || row.has(Col::covariates)) return;
+  const bool of_welch = fractional || row.x.printed(Col::df).decimals > 0;
+  if (of_welch || df >= limit->most / 2.0 || row.has(Col::covariates)) return;
   row.report(id, Grade::worth_a_look,
              fmt::format("df is printed as {}, less than half of {} = {:g}.", row.text(Col::df), limit->rule,
                          limit->most),

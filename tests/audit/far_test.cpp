@@ -1,8 +1,10 @@
 // A study far from the others.
 #include <catch2/catch.hpp>
+#include <cmath>
 #include <string>
 
 #include "steelyard/audit.hpp"
+#include "steelyard/numeric.hpp"
 
 namespace {
 
@@ -45,4 +47,19 @@ TEST_CASE("other metrics are compared among themselves only") {
   REQUIRE(far(rows).size() == 1);
   CHECK(far(rows)[0].row == 4);
   CHECK(far("study,estimate,se,metric\nA,10.1,1.0,a\nB,11.0,1.1,a\nC,9.6,0.9,a\nD,30.0,1.0,b\n").empty());
+}
+
+TEST_CASE("tables without any stranger seldom have one pointed out") {
+  std::size_t found = 0;
+  for (int table = 0; table < 200; ++table) {
+    std::string csv = "study,t,n1,n2\n";
+    for (int i = 0; i < 8; ++i) {
+      // t of equal effects: quantiles of a fixed low-discrepancy sequence, as even as chance
+      const double u = std::fmod(0.5 + 0.6180339887498949 * (table * 8 + i), 1.0);
+      csv += std::string("S").append(std::to_string(i)).append(",=");
+      csv += std::to_string(1.5 + steelyard::numeric::normal_upper_quantile(u)).append("!,60,60\n");
+    }
+    found += far(csv).size();
+  }
+  CHECK(found <= 4);
 }

@@ -44,9 +44,14 @@ void two_groups_from_test(const RowView& row, const Range& t, std::vector<Range>
   add(row, to, times(t, 1.0 / std::sqrt(row.frame->n_scores)));
   add(row, to, times(t, 2.0 / std::sqrt(row.frame->df)));
   add(row, to, times(t, 2.0 / std::sqrt(people)));
+  if (!row.has(Col::n1) || !row.has(Col::n2)) {
+    // Only a total: anything from an even split to 1:9.
+    add(row, to, {2.0 / std::sqrt(people) * t.low, 10.0 / (3.0 * std::sqrt(people)) * t.high});
+    return;
+  }
   const bool student =
       row.x.facts().word(Col::welch) == "no" || (row.has(Col::df) && row.value(Col::df) == people - 2.0);
-  if (student || !row.has(Col::n1) || !row.has(Col::n2)) return;
+  if (student) return;
   const double n1 = row.value(Col::n1);
   const double n2 = row.value(Col::n2);
   if (n1 < 2.0 || n2 < 2.0 || n1 == n2) return;

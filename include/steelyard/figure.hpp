@@ -40,6 +40,9 @@ struct Tick {
 /// A number with that many decimals, U+2212 as minus, never "−0"; beyond 1e7 as a power of ten.
 [[nodiscard]] std::string number_text(double value, int decimals);
 
+/// A probability in per cent: "97.5%", "<0.1%", ">99.9%".
+[[nodiscard]] std::string percent_text(double share);
+
 struct Point {
   double x = 0.0;
   double y = 0.0;

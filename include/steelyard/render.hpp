@@ -39,6 +39,12 @@ struct SvgStyle {
 
 /// A whole SVG file, ends with a newline; the same bytes for the same input.
 [[nodiscard]] std::string render_svg(const figure::Forest& forest, const SvgStyle& style = {});
+[[nodiscard]] std::string render_svg(const figure::Surface& surface, const SvgStyle& style = {});
+[[nodiscard]] std::string render_svg(const figure::Belief& belief, const SvgStyle& style = {});
+[[nodiscard]] std::string render_svg(const figure::Funnel& funnel, const SvgStyle& style = {});
+[[nodiscard]] std::string render_svg(const figure::Ladder& ladder, const SvgStyle& style = {});
+[[nodiscard]] std::string render_svg(const figure::Sway& sway, const SvgStyle& style = {});
+[[nodiscard]] std::string render_svg(const figure::PriorMap& map, const SvgStyle& style = {});
 
 /// The style rules of all figures, light and dark, for a page that embeds them.
 [[nodiscard]] std::string svg_stylesheet();

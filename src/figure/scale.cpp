@@ -89,6 +89,12 @@ int decimals_for(double width) {
   return std::min(2 + static_cast<int>(std::ceil(std::log10(0.3 / width))), 12);
 }
 
+std::string percent_text(double share) {
+  if (share > 0 && share < 0.0005) return "<0.1%";
+  if (share < 1 && share > 0.9995) return ">99.9%";
+  return fmt::format("{:.1f}%", 100 * share);
+}
+
 std::string number_text(double value, int decimals) {
   if (value != 0 && std::fabs(value) >= 1e7) return scientific(value);
   const std::string text = fmt::format("{:.{}f}", value, decimals);

@@ -6,7 +6,7 @@
 #include <string>
 #include <vector>
 
-#include "steelyard/analysis.hpp"
+#include "steelyard/figure.hpp"
 
 namespace made_up {
 
@@ -141,6 +141,40 @@ inline Analysis analysis(std::size_t count, double effect = 0.4, double scale = 
     result.i2 = result.pooled_effect_random;
   }
   result.posterior = std::make_shared<NormalPosterior>(mean, sd, 0.2);
+  return out;
+}
+
+/// Pooled answers as the first study, then the first two, ... come in.
+inline std::vector<figure::Answer> answers(const Analysis& analysis) {
+  std::vector<figure::Answer> out;
+  double log_bf = -0.4;
+  for (std::size_t i = 0; i < analysis.studies.size(); ++i) {
+    log_bf += 0.4 * analysis.result.studies[i].log_bf * std::cos(static_cast<double>(i)) + 0.1;
+    out.push_back({analysis.studies[i].label, analysis.studies[i].year, log_bf, {0.4, 0.2, 0.6, ""}});
+  }
+  return out;
+}
+
+/// Pooled answers without each study.
+inline std::vector<figure::Answer> without(const Analysis& analysis) {
+  std::vector<figure::Answer> out = answers(analysis);
+  const double all = *out.back().log_bf;
+  for (std::size_t i = 0; i < out.size(); ++i) out[i].log_bf = all - 0.3 * analysis.result.studies[i].log_bf;
+  return out;
+}
+
+/// A grid over which the verdict turns at wide priors.
+inline figure::PriorGrid grid(std::size_t widths, std::size_t scales) {
+  figure::PriorGrid out;
+  for (std::size_t i = 0; i < widths; ++i)
+    out.widths.push_back(0.1 * std::pow(30.0, static_cast<double>(i) / static_cast<double>(widths - 1)));
+  for (std::size_t j = 0; j < scales; ++j)
+    out.scales.push_back(0.02 * std::pow(50.0, static_cast<double>(j) / static_cast<double>(scales - 1)));
+  for (const double width : out.widths)
+    for (const double scale : out.scales)
+      out.log_bf.push_back(4.0 - 3.5 * std::log(1 + width) - 2.0 * std::sqrt(scale));
+  out.width_used = 0.7071;
+  out.scale_used = 0.15;
   return out;
 }
 

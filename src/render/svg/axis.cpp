@@ -39,9 +39,9 @@ double axis_below(Drawing& drawing, const Axis& axis, double y, double size, boo
   for (const auto& tick : fitting_ticks(axis, size, true)) {
     const double x = axis.px(tick.value);
     drawing.line(x, y, x, y + 3, "frame");
-    drawing.text(x, y + 4 + ascent * size, tick.text, "soft", size, Anchor::middle);
+    drawing.text(x, y + 5.5 + ascent * size, tick.text, "soft", size, Anchor::middle);
   }
-  double bottom = y + 4 + (ascent + descent) * size;
+  double bottom = y + 5.5 + (ascent + descent) * size;
   if (with_title && !axis.scale.title.empty()) {
     drawing.label((axis.from + axis.to) / 2, bottom + ascent * size, axis.scale.title,
                   std::fabs(axis.to - axis.from), "ink", size, Anchor::middle);

@@ -39,6 +39,17 @@ constexpr std::string_view light = R"(.y-figure{font-family:"DejaVu Sans",Verdan
 .y-band-edge{fill:none;stroke:#6b7d99;stroke-width:.8}
 .y-band-wide{fill:none;stroke:#94701c;stroke-width:1;stroke-dasharray:4 2.5}
 .y-turn{fill:none;stroke:#1c2530;stroke-width:1.6}
+.y-turn-halo{fill:none;stroke:#fff;stroke-width:3.6}
+.y-favour-1{fill:#fbf3e8}
+.y-favour-2{fill:#f6e0c3}
+.y-favour-3{fill:#ecc391}
+.y-favour-4{fill:#a8621a}
+.y-favour-5{fill:#7c420b}
+.y-oppose-1{fill:#ecf3f5}
+.y-oppose-2{fill:#cfe2e8}
+.y-oppose-3{fill:#a2c8d3}
+.y-oppose-4{fill:#2d7288}
+.y-oppose-5{fill:#15495a}
 )";
 
 constexpr std::string_view dark = R"(.y-paper{fill:#12161c}
@@ -71,6 +82,17 @@ constexpr std::string_view dark = R"(.y-paper{fill:#12161c}
 .y-band-edge{stroke:#8ea2c2}
 .y-band-wide{stroke:#dcb75a}
 .y-turn{stroke:#e7eaf0}
+.y-turn-halo{stroke:#12161c}
+.y-favour-1{fill:#241d16}
+.y-favour-2{fill:#3d2c18}
+.y-favour-3{fill:#5e421d}
+.y-favour-4{fill:#d68f45}
+.y-favour-5{fill:#f5bd80}
+.y-oppose-1{fill:#151f24}
+.y-oppose-2{fill:#1a323b}
+.y-oppose-3{fill:#1f4b59}
+.y-oppose-4{fill:#5db0c5}
+.y-oppose-5{fill:#9bdcec}
 )";
 
 }  // namespace

@@ -116,8 +116,10 @@ std::optional<double> scale(std::string_view digits, int exponent) {
 
 std::optional<std::int64_t> as_integer(const Decimal& decimal) {
   std::int64_t n = 0;
-  if (decimal.size > 17) return std::nullopt;
-  for (std::size_t i = 0; i < decimal.size; ++i) n = 10 * n + (decimal.digits[i] - '0');
+  std::size_t first = 0;
+  while (first < decimal.size && decimal.digits[first] == '0') ++first;
+  if (decimal.size - first > 17) return std::nullopt;
+  for (std::size_t i = first; i < decimal.size; ++i) n = 10 * n + (decimal.digits[i] - '0');
   return n;
 }
 

@@ -60,7 +60,8 @@ class TableBuilder {
   // `keep_line`: the cells say where they stood in the file that they first came from.
   bool cells(Row& row, bool keep_line) {
     if (!widen(row, last_width_)) return false;
-    const bool whole = json_.object([&](const std::string& key, const Place& where) {
+    const bool whole = json_.object([&](const std::string& name, const Place& where) {
+      const std::string key(trim(name));
       const int index = column(key, where);
       if (index < 0) return false;
       const auto i = static_cast<std::size_t>(index);
@@ -132,7 +133,7 @@ class TableBuilder {
     index_.emplace(key, index);
     table_.names.push_back(key);
     places_.push_back(where);
-    if (trim(key).empty()) {
+    if (key.empty()) {
       problems_.error("column-without-name", where, "This name is blank.", "Name the column.");
     }
     return index;
@@ -237,6 +238,10 @@ Outcome<Table> read_json(std::string_view text, const std::string& file) {
   if (whole && table.rows.empty() && !problems.has_errors()) {
     problems.error("no-rows", {file, 1, 1}, "There are no studies in this file.",
                    "Write an object for each study into the array.");
+  }
+  if (whole && !table.rows.empty() && table.names.empty()) {
+    problems.error("json-row", {file, table.rows[0].line, 0}, "The objects of the studies have no members.",
+                   "Write each study like {\"study\": \"A\", \"t\": 2.1, \"n1\": 20, \"n2\": 20}.");
   }
   if (whole && !table.names.empty()) check_names(table.names, places, problems);
   read_cells(table, builder.has_points(), problems);

@@ -18,7 +18,7 @@ bool has_subscript(const std::string& word, char letter) {
 void split_pair(Words& words, std::vector<Value>& df) {
   const Token& number = *words.token();
   words.skip();
-  const std::size_t comma = number.text.find(',');
+  const std::size_t comma = number.text.find(',', 1);
   df.push_back({number.text.substr(0, comma), &number});
   if (comma != std::string::npos) df.push_back({number.text.substr(comma + 1), &number});
 }

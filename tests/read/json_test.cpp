@@ -84,6 +84,10 @@ TEST_CASE("JSON that can't be used, word for word") {
       {"no studies", "[]",
        "f:1:1: error: There are no studies in this file. Write an object for each study into the array. "
        "[no-rows]\n"},
+      {"objects without members", "[{}, {}]",
+       "f:1: error: The objects of the studies have no members. Write each study like {\"study\": \"A\", "
+       "\"t\": 2.1, "
+       "\"n1\": 20, \"n2\": 20}. [json-row]\n"},
       {"no array", R"({"a": 1})",
        "f:1:1: error: This JSON object has no array \"studies\". Write an array of objects, [{\"study\": "
        "\"A\", \"t\": "

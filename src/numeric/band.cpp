@@ -21,46 +21,59 @@ constexpr double infinity = std::numeric_limits<double>::infinity();
 /// What is dropped below the largest value of the integrand, in nats.
 constexpr double negligible = 42.0;
 
-/// The integrand in a coordinate w that suits the band. Wide bands: t = √df·sinh w, which turns the
-/// algebraic tails in t into exponential ones. Narrow bands: t = low + w, because the difference of two
-/// hyperbolic sines would lose the digits of a short interval.
+/// The integrand in a coordinate w that suits the band. Usually t = √df·sinh w, which turns the algebraic
+/// tails in t into exponential ones. Narrow bands: t = low + w, because the difference of two hyperbolic
+/// sines would lose the digits of a short interval. Large df: t = w, there are no algebraic tails left.
 class Integrand {
  public:
   Integrand(const DensityKernel& kernel, double low, double high, double df, double ncp)
       : kernel_(kernel), origin_(low), root_df_(std::sqrt(df)), ncp_(ncp) {
-    narrow_ = high - low < 0.05 * (root_df_ + std::min(std::fabs(low), std::fabs(high)));
+    const bool narrow = high - low < 0.05 * (root_df_ + std::min(std::fabs(low), std::fabs(high)));
+    linear_ = narrow || df > 1e4;
+    if (!narrow) origin_ = 0.0;
     const double spread = std::sqrt(1.0 + 0.5 * ncp * ncp / df);
-    width_ = narrow_ ? spread : spread / std::sqrt(df + ncp * ncp);
+    width_ = linear_ ? spread : spread / std::sqrt(df + ncp * ncp);
   }
 
   template <std::size_t N>
   void log_values(const std::array<double, N>& w, std::array<double, N>& out) const {
     std::array<double, N> t;
-    for (std::size_t j = 0; j < N; ++j) t[j] = to_t(w[j]);
+    if (linear_) {
+      for (std::size_t j = 0; j < N; ++j) t[j] = origin_ + w[j];
+      kernel_.over_t(t, ncp_, out);
+      return;
+    }
+    std::array<double, N> log_slope;
+    for (std::size_t j = 0; j < N; ++j) {
+      const double up = vector_exp(w[j]);
+      const double down = 1.0 / up;
+      t[j] = 0.5 * root_df_ * (up - down);
+      log_slope[j] = vector_log(0.5 * root_df_ * (up + down));
+    }
     kernel_.over_t(t, ncp_, out);
-    if (narrow_) return;
-    for (std::size_t j = 0; j < N; ++j) out[j] += std::log(root_df_ * std::cosh(w[j]));
+    for (std::size_t j = 0; j < N; ++j) out[j] += log_slope[j];
   }
 
   [[nodiscard]] double log_value(double w) const {
-    return kernel_.at(to_t(w), ncp_) + (narrow_ ? 0.0 : std::log(root_df_ * std::cosh(w)));
+    if (linear_) return kernel_.at(origin_ + w, ncp_);
+    const double up = vector_exp(w);
+    const double down = 1.0 / up;
+    return kernel_.at(0.5 * root_df_ * (up - down), ncp_) + vector_log(0.5 * root_df_ * (up + down));
   }
 
-  [[nodiscard]] double to_w(double t) const { return narrow_ ? t - origin_ : std::asinh(t / root_df_); }
+  [[nodiscard]] double to_w(double t) const { return linear_ ? t - origin_ : std::asinh(t / root_df_); }
 
   /// A first guess of where the mass lies and how wide it is, in w.
   [[nodiscard]] double centre() const { return to_w(ncp_); }
   [[nodiscard]] double width() const { return width_; }
 
  private:
-  [[nodiscard]] double to_t(double w) const { return narrow_ ? origin_ + w : root_df_ * std::sinh(w); }
-
   const DensityKernel& kernel_;
   double origin_;
   double root_df_;
   double ncp_;
   double width_;
-  bool narrow_;
+  bool linear_;
 };
 
 struct Peak {

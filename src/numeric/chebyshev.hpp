@@ -69,6 +69,9 @@ class LogCurve {
   [[nodiscard]] double high() const { return panels_.back().high; }
   [[nodiscard]] std::size_t evaluations() const { return evaluations_; }
 
+  /// Subtracts another function, interpolated on the same panels.
+  void subtract(const BlockFunction& function);
+
   /// The panel that holds x (the nearest one outside).
   [[nodiscard]] const Panel& panel_at(double x) const;
   /// Value at x in [low, high]; −infinity outside.

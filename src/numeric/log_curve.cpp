@@ -52,6 +52,20 @@ LogCurve::LogCurve(const BlockFunction& function, std::span<const double> breaks
   }
 }
 
+void LogCurve::subtract(const BlockFunction& function) {
+  for (Panel& panel : panels_) {
+    const double middle = panel.low + 0.5 * (panel.high - panel.low);
+    const double half = 0.5 * (panel.high - panel.low);
+    ChebyshevArray x{};
+    ChebyshevArray values{};
+    for (std::size_t j = 0; j < N; ++j) x[j] = middle + half * chebyshev_nodes()[j];
+    function(x, values);
+    const ChebyshevArray other = chebyshev_fit(values);
+    for (std::size_t k = 0; k < N; ++k) panel.coefficients[k] -= other[k];
+    panel.error += chebyshev_tail(other);
+  }
+}
+
 const LogCurve::Panel& LogCurve::panel_at(double x) const {
   const auto after = std::upper_bound(panels_.begin(), panels_.end(), x,
                                       [](double value, const Panel& panel) { return value < panel.high; });

@@ -53,11 +53,28 @@ void Row::log_density(const PriorBlock& prior, std::span<const double> x, std::s
                                                            : -std::numeric_limits<double>::infinity();
     return;
   }
-  for (std::size_t j = 0; j < x.size(); ++j) {
-    out[j] = curve(x[j]);
-    if (std::isfinite(out[j])) prior.add({&x[j], 1}, {&out[j], 1});
-    out[j] -= log_integral;
+  for (std::size_t j = 0; j < x.size();) {
+    if (!(x[j] >= curve.low() && x[j] <= curve.high())) {
+      out[j++] = -std::numeric_limits<double>::infinity();
+      continue;
+    }
+    // Neighbouring points mostly share a panel.
+    const numeric::LogCurve::Panel& panel = curve.panel_at(x[j]);
+    std::size_t n = 1;
+    while (j + n < x.size() && x[j + n] >= panel.low && x[j + n] <= panel.high) ++n;
+    numeric::LogCurve::evaluate(panel, &x[j], &out[j], n);
+    prior.add(x.subspan(j, n), out.subspan(j, n));
+    for (std::size_t i = j; i < j + n; ++i) out[i] -= log_integral;
+    j += n;
   }
+}
+
+numeric::LogCurve curve_without(const Row& row, const Field& field, std::size_t study) {
+  numeric::LogCurve out = row.curve;
+  out.subtract([&](std::span<const double> x, std::span<double> values) {
+    field.evaluate_one(study, row.spread, x, values);
+  });
+  return out;
 }
 
 Window row_window(const Field& field, const PriorBlock& prior, double spread,

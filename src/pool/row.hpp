@@ -34,6 +34,9 @@ struct Row {
   void log_density(const PriorBlock& prior, std::span<const double> x, std::span<double> out) const;
 };
 
+/// The row's curve with one study's log likelihood taken out.
+[[nodiscard]] numeric::LogCurve curve_without(const Row& row, const Field& field, std::size_t study);
+
 /// Where a neighbouring row found its mass.
 struct Hint {
   double best = 0.0;

@@ -33,7 +33,7 @@ struct Progress::Watch {
       show(fmt::format("\r{}: {} s ", what, seconds));
       shown = true;
     }
-    if (shown) show("\r\x1b[K");
+    if (shown) show("\r" + std::string(what.size() + 12, ' ') + "\r");
   }
 };
 

@@ -99,7 +99,7 @@ TEST_CASE("text is ASCII unless the locale is UTF-8, and never coloured into a f
 TEST_CASE("colour can be forced, and NO_COLOR is obeyed on a terminal", "[cli]") {
   CHECK_THAT(run_command({"pool", demo, "--colour", "always"}).out, Catch::Contains("\x1b["));
   // `script` gives the command a terminal.
-  const std::string line = "script -qec \"$STEELYARD pool '" + demo + "'\" /dev/null < /dev/null";
+  const std::string line = "script -qec \"$STEELYARD pool '" + demo + "' 2> /dev/null\" /dev/null < /dev/null";
   CHECK_THAT(shell(line).out, Catch::Contains("\x1b["));
   Setting setting;
   setting.environment = {{"NO_COLOR", "1"}};

@@ -29,15 +29,28 @@ void tabulate(ld nu, int first, int pieces, int terms, ld piece, const ld* nodes
 }
 
 typedef struct {
-  ld nu, constant, piece;
+  ld nu, root, constant, piece; /* root: of nu */
   int first, pieces, terms;
   const ld* coefficients;
 } table;
 
-/* log f(t; nu, ncp); -1e18 beyond the table, where the density is smaller than any that counts. */
-static ld log_density(const table* k, ld t, ld ncp) {
-  const ld x2 = t * t / k->nu, y = ncp * t / sqrtl(k->nu * (1 + x2));
-  const ld z = asinhl(y / (2 * sqrtl(k->nu))), place = z / k->piece - k->first;
+/* What depends on the scaled t alone. */
+typedef struct {
+  ld ratio, fixed; /* t / sqrt(nu + t^2); the constant and the power of nu + t^2 */
+} scaled;
+
+static scaled scale(const table* k, ld t) {
+  const ld x2 = t * t / k->nu;
+  const scaled r = {t / sqrtl(k->nu * (1 + x2)), k->constant - (k->nu + 1) / 2 * log1pl(x2)};
+  return r;
+}
+
+/* log f(t; nu, ncp); -1e18 beyond the table, where the density is smaller than any that counts.
+ * The peak of the integral: (nu+1) log w0 - w0^2/2 + y w0 with w0^2 = y w0 + nu. */
+static ld log_density(const table* k, scaled at, ld ncp) {
+  const ld y = ncp * at.ratio, root = sqrtl(y * y + 4 * k->nu);
+  const ld w0 = y > 0 ? (y + root) / 2 : 2 * k->nu / (root - y);
+  const ld z = logl(w0 / k->root), place = z / k->piece - k->first;
   const int p = (int)floorl(place);
   if (!(place >= 0) || p >= k->pieces) return -1e18L;
   const ld* c = k->coefficients + p * k->terms;
@@ -48,20 +61,26 @@ static ld log_density(const table* k, ld t, ld ncp) {
     last = value;
     value = next;
   }
-  value = x * value - last + c[0];
-  value += (k->nu + 1) * z + logl(k->nu) / 2 + k->nu * expm1l(2 * z) / 2 - k->nu / 2;
-  return k->constant - ncp * ncp / 2 - (k->nu + 1) / 2 * log1pl(x2) + value;
+  return at.fixed - ncp * ncp / 2 + (k->nu + 1) * z + y * w0 / 2 + (x * value - last + c[0]);
 }
 
 static ld log_add(ld a, ld b) { return a > b ? a + log1pl(expl(b - a)) : b + log1pl(expl(a - b)); }
 
 void add_exact(const table* k, ld t, ld n, int folded, long count, const ld* mean, const ld* spread,
                ld* out) {
+  ld last = -1, s = 1, log_s = 0, per_mean = 0;
+  scaled near = {0, 0}, far = {0, 0};
   for (long i = 0; i < count; ++i) {
-    const ld s = sqrtl(1 + n * spread[i] * spread[i]), ncp = mean[i] * sqrtl(n) / s;
-    ld value = log_density(k, t / s, ncp);
-    if (folded) value = log_add(value, log_density(k, -t / s, ncp));
-    out[i] += value - logl(s);
+    if (spread[i] != last) {
+      last = spread[i];
+      s = sqrtl(1 + n * last * last);
+      log_s = logl(s);
+      per_mean = sqrtl(n) / s;
+      near = scale(k, t / s);
+      far = scale(k, -t / s);
+    }
+    const ld ncp = mean[i] * per_mean, value = log_density(k, near, ncp);
+    out[i] += (folded ? log_add(value, log_density(k, far, ncp)) : value) - log_s;
   }
 }
 

@@ -54,3 +54,10 @@ def write(name, header, columns, rows):
     path = REFERENCE / name
     path.write_text(header + ",".join(columns) + "\n" + "".join(",".join(row) + "\n" for row in rows))
     print(f"{path}: {len(rows)} rows")
+
+
+def write_lines(name, header, blocks):
+    """A table whose lines are of several kinds, the first field saying which."""
+    path = REFERENCE / name
+    path.write_text(header + "".join(blocks))
+    print(f"{path}: {len(blocks)} cases")

@@ -116,7 +116,7 @@ numeric::DensityCurve through_logarithm(const numeric::BlockFunction& density, c
   space.log_integrand = log_density;
   const Window window = find_window(space);
   std::vector<double> wanted;
-  for (double offset = 9.0; offset * window.width < window.high - window.low; offset *= 4.0) {
+  for (double offset = 2.5; offset * window.width < window.high - window.low; offset *= 3.5) {
     wanted.push_back(window.best - offset * window.width);
     wanted.push_back(window.best + offset * window.width);
   }

@@ -139,27 +139,41 @@ void add_kernel(double x, double spread, const numeric::KronrodArray& m, numeric
   }
 }
 
-/// ∫ row(m)·Normal(x; m, τ²) dm by one panel of 31 points.
-double convolve_clipped(const Row& row, const PriorBlock& prior, double x) {
+/// out[j] += weight·∫ row(m)·Normal(x[j]; m, τ²) dm, each by one panel of 31 points over the part of the row
+/// within 7.5 τ of x[j]; all points are evaluated together.
+void add_clipped(const Row& row, const PriorBlock& prior, double weight, std::span<const double> x,
+                 std::span<double> out) {
   constexpr double reach = 7.5;
-  const double low = std::max(row.window.low, x - reach * row.spread);
-  const double high = std::min(row.window.high, x + reach * row.spread);
-  if (!(low < high)) return 0.0;
+  constexpr std::size_t n = numeric::kronrod_points;
   const numeric::KronrodRule& rule = numeric::kronrod_rule();
-  const double middle = low + 0.5 * (high - low);
-  const double half = 0.5 * (high - low);
-  numeric::KronrodArray m;
-  numeric::KronrodArray g;
-  for (std::size_t i = 0; i < m.size(); ++i) m[i] = middle + half * rule.x[i];
-  row.log_density(prior, m, g);
-  add_kernel(x, row.spread, m, g);
-  numeric::exp_shifted(g.data(), 0.0, g.size());
-  double sum = 0.0;
-  for (std::size_t i = 0; i < m.size(); ++i) sum += rule.weight[i] * g[i];
-  return half * sum;
+  std::array<double, n * numeric::chebyshev_points> m;
+  std::array<double, n * numeric::chebyshev_points> g;
+  std::array<double, numeric::chebyshev_points> half{};
+  for (std::size_t j = 0; j < x.size(); ++j) {
+    const double low = std::clamp(x[j] - reach * row.spread, row.window.low, row.window.high);
+    const double high = std::clamp(x[j] + reach * row.spread, row.window.low, row.window.high);
+    const double middle = low + 0.5 * (high - low);
+    half[j] = 0.5 * (high - low);
+    for (std::size_t i = 0; i < n; ++i) m[j * n + i] = middle + half[j] * rule.x[i];
+  }
+  const std::size_t count = n * x.size();
+  row.log_density(prior, {m.data(), count}, {g.data(), count});
+  const double inv = 1.0 / row.spread;
+  for (std::size_t j = 0; j < x.size(); ++j)
+    for (std::size_t i = 0; i < n; ++i) {
+      const double z = (x[j] - m[j * n + i]) * inv;
+      g[j * n + i] -= 0.5 * z * z;
+    }
+  numeric::exp_shifted(g.data(), 0.0, count);
+  const double front = weight * inv / std::sqrt(2.0 * std::numbers::pi);
+  for (std::size_t j = 0; j < x.size(); ++j) {
+    double sum = 0.0;
+    for (std::size_t i = 0; i < n; ++i) sum += rule.weight[i] * g[j * n + i];
+    out[j] += front * half[j] * sum;
+  }
 }
 
-/// The same by adaptive quadrature.
+/// ∫ row(m)·Normal(x; m, τ²) dm by adaptive quadrature.
 double convolve_adaptive(const Row& row, const PriorBlock& prior, double x) {
   constexpr double reach = 8.0;
   const double low = std::max(row.window.low, x - reach * row.spread);
@@ -191,9 +205,12 @@ void add_part(const Part& part, const PriorBlock& prior, std::span<const double>
     for (std::size_t j = 0; j < x.size(); ++j) out[j] += front * one[j];
     return;
   }
+  if (part.way == Way::clipped) {
+    add_clipped(part.shape(), prior, part.weight, x, out);
+    return;
+  }
   for (std::size_t j = 0; j < x.size(); ++j)
-    out[j] += part.weight * (part.way == Way::clipped ? convolve_clipped(part.shape(), prior, x[j])
-                                                      : convolve_adaptive(part.shape(), prior, x[j]));
+    out[j] += part.weight * convolve_adaptive(part.shape(), prior, x[j]);
 }
 
 /// Where the density may live, and its peak.

@@ -73,10 +73,11 @@ class Words {
   Outcome<std::vector<NamedCell>> finish();
 
   // -- what later phrases need to know of earlier ones
-  std::string_view last;       ///< the statistic before: an interval or a standard error belongs to it
-  int group = 0;               ///< the group whose mean came last
-  std::string_view spread;     ///< "sd" or "se": what a bare number in brackets after a mean is
-  std::vector<Value> loose_n;  ///< sizes that name no group
+  std::string_view last;          ///< the statistic before: an interval or a standard error belongs to it
+  int group = 0;                  ///< the group whose mean came last
+  std::string_view spread;        ///< "sd" or "se": what a bare number in brackets after a mean is
+  bool size_in_brackets = false;  ///< a size stood in the brackets behind a mean, without a number
+  std::vector<Value> loose_n;     ///< sizes that name no group
 
  private:
   [[nodiscard]] const NamedCell* find(std::string_view column) const;

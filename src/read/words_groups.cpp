@@ -79,9 +79,10 @@ void take_for_each(Words& words, const Value& number) {
   words.take("n2", number);
 }
 
-void detail(Words& words, std::string_view stem, const Value& number) {
-  if (is_spread(stem)) words.spread = stem;
-  words.take(column(stem, words.group), number);
+void detail(Words& words, const GroupWord& named, const Value& number) {
+  if (is_spread(named.stem)) words.spread = named.stem;
+  if (named.stem == "n" && named.group == 0) words.size_in_brackets = true;
+  words.take(column(named.stem, named.group != 0 ? named.group : words.group), number);
 }
 
 // One item in the brackets behind a mean; false when it is something else.
@@ -97,14 +98,14 @@ bool mean_detail(Words& words, int& bare) {
     }
     if (bare > 1) return false;
     const std::string_view stem = bare++ == 0 ? words.spread : "n";
-    if (const auto number = words.number()) detail(words, stem, *number);
+    if (const auto number = words.number()) detail(words, {stem, 0}, *number);
     return true;
   }
   const auto named = group_word(words);
   if (!named || is_center(named->stem)) return false;
   words.skip();
   if (!words.relation_here()) return words.back_to(from);
-  if (const auto number = words.value(from)) detail(words, named->stem, *number);
+  if (const auto number = words.value(from)) detail(words, *named, *number);
   return true;
 }
 
@@ -249,7 +250,7 @@ void settle_sizes(Words& words) {
     words.take("n2", sizes[1]);
   } else if (sizes.size() == 1) {
     words.take(words.has("n2") ? "n1" : "n", sizes[0]);
-  } else if (words.has("mean1") && words.has("n1") && !words.has("mean2") && !words.has("n2")) {
+  } else if (words.size_in_brackets && words.has("n1") && !words.has("mean2") && !words.has("n2")) {
     words.rename("n1", "n");  // in the brackets of the only mean: the one sample's size
   }
 }

@@ -17,7 +17,8 @@ constexpr std::string_view id = "far-from-others";
 constexpr std::size_t fewest = 4;       // studies of one metric; the spread of three others is hardly known
 constexpr double line = 0.01;           // adjusted for the number of studies
 constexpr double worth_exact = 0.5;     // a rough adjusted p above this is left at that
-constexpr std::size_t most_exact = 25;  // studies looked at exactly, the most extreme first
+constexpr std::size_t most_exact = 25;  // suspects looked at, the most extreme first
+constexpr std::size_t most_studies = 500;  // beyond that the rough p, which is then nearly right, has to do
 
 // A signed estimate with its approximate variance.
 struct Point {
@@ -144,7 +145,9 @@ std::vector<Suspect> suspects(const std::vector<Point>& points) {
 void check_metric(const TableView& view, const std::vector<Point>& points) {
   if (points.size() < fewest) return;
   for (const Suspect& suspect : suspects(points)) {
-    const double p = adjusted(exact_p(points, suspect.index, suspect.scale), points.size());
+    const double p = points.size() > most_studies
+                         ? suspect.rough
+                         : adjusted(exact_p(points, suspect.index, suspect.scale), points.size());
     if (!(p < line)) continue;
     const Study& study = *points[suspect.index].study;
     view.report(

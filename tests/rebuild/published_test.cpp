@@ -1,5 +1,7 @@
 // Rows whose right answer stands in a book or a paper. Values marked "from memory" were not looked up again.
+#include <boost/math/special_functions/gamma.hpp>
 #include <cmath>
+#include <numbers>
 
 #include "help.hpp"
 #include "rebuild/student.hpp"
@@ -58,6 +60,13 @@ TEST_CASE("Hedges: exact J") {
                                                         {10, .9227}, {20, .9619}, {50, .9849}};
   for (const auto& [df, j] : table) CHECK(steelyard::hedges_j(df) == printed(j, 4));
   CHECK(steelyard::hedges_j(1.0) == 0.0);
+  // Γ at whole and half numbers in closed form: J(3) = Γ(3/2)/(√(3/2)·Γ(1)), J(2) = 1/√π
+  CHECK(steelyard::hedges_j(2.0) == Approx(1.0 / std::sqrt(std::numbers::pi)).epsilon(1e-15));
+  CHECK(steelyard::hedges_j(3.0) == Approx(std::sqrt(std::numbers::pi) / 2 / std::sqrt(1.5)).epsilon(1e-15));
+  for (const double df : {1.01, 1.7, 5.0, 33.0, 34.0, 98.0, 1e4}) {
+    const double expected = boost::math::tgamma_ratio(df / 2, (df - 1) / 2) / std::sqrt(df / 2);
+    CHECK(steelyard::hedges_j(df) == Approx(expected).epsilon(1e-13));
+  }
   // J → 1 − 3/(4ν) as ν grows; separate log gammas would miss this by 1e-7.
   CHECK(1.0 - steelyard::hedges_j(1e9) == Approx(0.75e-9).epsilon(1e-6));
 }

@@ -14,6 +14,9 @@
 #include "steelyard/pool.hpp"
 #include "steelyard/read.hpp"
 #include "steelyard/rebuild.hpp"
+#include "steelyard/replicate.hpp"
+#include "steelyard/stress.hpp"
+#include "steelyard/weigh.hpp"
 
 namespace steelyard {
 
@@ -61,6 +64,48 @@ struct RecordedRun {
 
 /// Reads the JSON that `pool` wrote. Error when it is something else, or of a newer kind.
 [[nodiscard]] Outcome<RecordedRun> read_result(std::string_view text, const std::string& file);
+
+/// Rows that were read, rebuilt and audited: where every command that works on studies begins.
+struct Gathered {
+  Input input;
+  AnalysisOptions options;
+  std::vector<Study> studies;
+  std::vector<Finding> findings;
+  std::vector<std::string> left_out;  ///< labels named by `without`
+  std::vector<Diagnostic> cautions;   ///< of reading and rebuilding
+};
+
+/// Error when a row that stays can't be rebuilt, or priors must be stated.
+[[nodiscard]] Outcome<Gathered> gather(Input input, const AnalysisOptions& options,
+                                       std::vector<Diagnostic> cautions = {});
+
+/// A finished analysis of `weigh`.
+struct WeighAnalysis {
+  Gathered rows;
+  WeighOptions options;
+  WeighResult result;
+};
+[[nodiscard]] Outcome<WeighAnalysis> analyse_weigh(Gathered rows, const WeighOptions& options);
+
+/// A finished analysis of `stress`; with `by`, differences among the groups of that column.
+struct StressAnalysis {
+  Gathered rows;
+  StressOptions options;
+  std::string by;
+  StressResult result;
+  std::optional<GroupResult> groups;  ///< absent without `by` or with fewer than two groups
+};
+/// `by`: the label column that makes groups, or "". Error when there is no such column or a cell is empty.
+[[nodiscard]] Outcome<StressAnalysis> analyse_stress(Gathered rows, StressOptions options,
+                                                     const std::string& by);
+
+/// A finished analysis of `replicate`.
+struct ReplicateAnalysis {
+  Gathered rows;
+  ReplicateOptions options;
+  ReplicateResult result;
+};
+[[nodiscard]] Outcome<ReplicateAnalysis> analyse_replicate(Gathered rows, const ReplicateOptions& options);
 
 /// What `check` looks at.
 struct CheckOptions {

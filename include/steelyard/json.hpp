@@ -22,6 +22,9 @@ using Sink = std::function<void(std::string_view)>;
 /// double; what is not finite or not known is null; logarithms are natural.
 void write_json(const Analysis& analysis, const Sink& sink);
 void write_json(const Check& check, const Sink& sink);
+void write_json(const WeighAnalysis& analysis, const Sink& sink);
+void write_json(const StressAnalysis& analysis, const Sink& sink);
+void write_json(const ReplicateAnalysis& analysis, const Sink& sink);
 
 /// The same as one string.
 [[nodiscard]] std::string render_json(const Check& check);

@@ -31,60 +31,58 @@ std::optional<Diagnostic> priors_needed(const std::vector<Study>& studies, const
 
 }  // namespace
 
-Outcome<Analysis> analyse_table(Input input, const AnalysisOptions& options,
-                                std::vector<Diagnostic> cautions) {
-  Outcome<Analysis> outcome;
-  auto fail = [&outcome](std::vector<Diagnostic>&& diagnostics) {
-    for (Diagnostic& d : diagnostics) outcome.diagnostics.push_back(std::move(d));
-    outcome.value.reset();
-  };
-
-  Analysis analysis;
-  analysis.options = options;
-  analysis.input = std::move(input);
-  analysis.cautions = std::move(cautions);
-  const Table& table = analysis.input.table;
-
+Outcome<Gathered> gather(Input input, const AnalysisOptions& options, std::vector<Diagnostic> cautions) {
+  Gathered rows;
+  rows.options = options;
+  rows.input = std::move(input);
+  rows.cautions = std::move(cautions);
+  const Table& table = rows.input.table;
   auto kept = analysis::keep_rows(table, options.without);
-  if (!kept.ok()) {
-    fail(std::move(kept.diagnostics));
-    return outcome;
-  }
-  analysis.left_out = kept.value->left_out;
-  const bool whole = analysis.left_out.empty();
+  if (!kept.ok()) return {std::nullopt, std::move(kept.diagnostics)};
+  rows.left_out = kept.value->left_out;
+  const bool whole = rows.left_out.empty();
   const Table part = whole ? Table{} : analysis::subset(table, kept.value->rows);
   const Table& used = whole ? table : part;
 
   auto rebuilt = rebuild_all(used, options.rebuild);
   std::vector<Diagnostic> errors;
-  analysis::sort_out(std::move(rebuilt.diagnostics), errors, analysis.cautions);
+  analysis::sort_out(std::move(rebuilt.diagnostics), errors, rows.cautions);
   if (!rebuilt.ok()) {
-    for (Diagnostic& d : analysis.cautions) errors.push_back(std::move(d));
-    fail(std::move(errors));
-    return outcome;
+    for (Diagnostic& d : rows.cautions) errors.push_back(std::move(d));
+    return {std::nullopt, std::move(errors)};
   }
-  analysis.studies = std::move(*rebuilt.value);
-  analysis.findings = audit(used, analysis.studies, options.rebuild);
+  rows.studies = std::move(*rebuilt.value);
+  rows.findings = audit(used, rows.studies, options.rebuild);
   if (!whole) {
-    analysis::point_at_whole_table(std::span<Study>(analysis.studies), table, kept.value->rows);
-    analysis::point_at_whole_table(std::span<Finding>(analysis.findings), kept.value->rows);
+    analysis::point_at_whole_table(std::span<Study>(rows.studies), table, kept.value->rows);
+    analysis::point_at_whole_table(std::span<Finding>(rows.findings), kept.value->rows);
   }
-  if (auto problem = priors_needed(analysis.studies, options, analysis.input.file)) {
-    fail({std::move(*problem)});
-    return outcome;
+  if (auto problem = priors_needed(rows.studies, options, rows.input.file)) {
+    return {std::nullopt, {std::move(*problem)}};
   }
+  return {std::move(rows), {}};
+}
 
-  auto pooled = pool(analysis.studies, options.priors, options.pool);
-  if (!pooled.ok()) {
-    fail(std::move(pooled.diagnostics));
-    return outcome;
-  }
+Outcome<Analysis> analyse_table(Input input, const AnalysisOptions& options,
+                                std::vector<Diagnostic> cautions) {
+  auto gathered = gather(std::move(input), options, std::move(cautions));
+  if (!gathered.ok()) return {std::nullopt, std::move(gathered.diagnostics)};
+  Gathered& rows = *gathered.value;
+  auto pooled = pool(rows.studies, options.priors, options.pool);
+  if (!pooled.ok()) return {std::nullopt, std::move(pooled.diagnostics)};
+
+  Analysis analysis;
+  analysis.input = std::move(rows.input);
+  analysis.options = options;
+  analysis.studies = std::move(rows.studies);
+  analysis.findings = std::move(rows.findings);
+  analysis.left_out = std::move(rows.left_out);
+  analysis.cautions = std::move(rows.cautions);
   analysis.result = std::move(*pooled.value);
   for (Diagnostic& d : pooled.diagnostics) analysis.cautions.push_back(std::move(d));
   for (const Diagnostic& d : analysis.result.cautions) analysis.cautions.push_back(d);
-  outcome.diagnostics = analysis.cautions;
-  outcome.value = std::move(analysis);
-  return outcome;
+  std::vector<Diagnostic> said = analysis.cautions;
+  return {std::move(analysis), std::move(said)};
 }
 
 Outcome<Analysis> analyse_pool(std::string_view text, const std::string& file,

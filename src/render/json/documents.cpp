@@ -19,6 +19,9 @@ constexpr std::array described = {
     Described{{"studies", "A file of studies, as input"}, nullptr},
     Described{{"pool", "Result of steelyard pool"}, json::pool_shape},
     Described{{"check", "Result of steelyard check"}, json::check_shape},
+    Described{{"weigh", "Result of steelyard weigh"}, json::weigh_shape},
+    Described{{"stress", "Result of steelyard stress"}, json::stress_shape},
+    Described{{"replicate", "Result of steelyard replicate"}, json::replicate_shape},
 };
 
 const Described* find(std::string_view name) {

@@ -2,6 +2,8 @@
 
 #include <cmath>
 
+#include "render/json/rows.hpp"
+
 namespace steelyard::json {
 
 std::optional<double> finite(double value) {
@@ -200,6 +202,20 @@ std::string_view design_word(Design design) {
       return "paired";
   }
   return "";
+}
+
+Part<AnalysisOptions> analysis_options_part() {
+  using O = const AnalysisOptions&;
+  return object<AnalysisOptions>(
+      "options",
+      {{"level", "of the credible intervals", number<AnalysisOptions>([](O o) { return o.pool.level; })},
+       {"alpha", "what \"not significant\" means where the file does not say",
+        number<AnalysisOptions>([](O o) { return o.rebuild.alpha; })},
+       {"explicit_priors", "true when both priors were stated by the user",
+        boolean<AnalysisOptions>(&AnalysisOptions::explicit_priors)},
+       {"without", "studies to leave out, as named by the user",
+        array<AnalysisOptions>(text<std::string>([](const std::string& s) { return std::string_view(s); }),
+                               [](O o) -> const std::vector<std::string>& { return o.without; })}});
 }
 
 }  // namespace steelyard::json

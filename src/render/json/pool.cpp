@@ -2,7 +2,7 @@
 #include <utility>
 
 #include "render/json/documents.hpp"
-#include "render/json/parts.hpp"
+#include "render/json/rows.hpp"
 
 namespace steelyard::json {
 
@@ -98,20 +98,6 @@ Part<PoolResult> pooled_part() {
         summary(&PoolResult::i2)}});
 }
 
-Part<AnalysisOptions> options_part() {
-  using O = const AnalysisOptions&;
-  return object<AnalysisOptions>(
-      "options",
-      {{"level", "of the credible intervals", number<AnalysisOptions>([](O o) { return o.pool.level; })},
-       {"alpha", "what \"not significant\" means where the file does not say",
-        number<AnalysisOptions>([](O o) { return o.rebuild.alpha; })},
-       {"explicit_priors", "true when both priors were stated by the user",
-        boolean<AnalysisOptions>(&AnalysisOptions::explicit_priors)},
-       {"without", "studies to leave out, as named by the user",
-        array<AnalysisOptions>(text<std::string>([](const std::string& s) { return std::string_view(s); }),
-                               [](O o) -> const std::vector<std::string>& { return o.without; })}});
-}
-
 Part<Analysis> verdict_part() {
   using A = const Analysis&;
   const auto sentence = [](std::string Verdict::*member) {
@@ -142,35 +128,36 @@ Part<View> of_analysis(Part<U> part, Get get) {
 const Part<View>& pool_part() {
   using A = const Analysis&;
   static const Part<View> part = object<View>(
-      "", head_fields<View>("pool") +
-              std::vector<Field<View>>{
-                  {"input", "what was read: with priors and options, all it takes to repeat the run",
-                   of_analysis(input_part(), [](A a) -> const Input& { return a.input; })},
-                  {"priors", "what was assumed before the data",
-                   of_analysis(priors_part(), [](A a) -> const Priors& { return a.options.priors; })},
-                  {"options", "what was asked for",
-                   of_analysis(options_part(), [](A a) -> const AnalysisOptions& { return a.options; })},
-                  {"left_out", "labels of the studies that were left out",
-                   array<View>(text<std::string>([](const std::string& s) { return std::string_view(s); }),
-                               [](V v) -> const std::vector<std::string>& { return v.analysis->left_out; })},
-                  {"verdict", "the two questions, answered in a sentence each",
-                   of_analysis(verdict_part(), [](A a) -> const Analysis& { return a; })},
-                  {"accurate", "false when an integral missed its promised accuracy",
-                   boolean<View>([](V v) { return v.analysis->result.accurate; })},
-                  {"studies", "the studies that were pooled", array<View>(study_part(), study_views)},
-                  {"models", "the four models",
-                   array<View>(model_part(),
-                               [](V v) -> const std::array<ModelResult, model_count>& {
-                                 return v.analysis->result.models;
-                               })},
-                  {"evidence",
-                   "Bayes factors: posterior odds over prior odds of the class; null when not identified",
-                   of_analysis(evidence_part(), [](A a) -> const PoolResult& { return a.result; })},
-                  {"pooled", "what is known after the data",
-                   of_analysis(pooled_part(), [](A a) -> const PoolResult& { return a.result; })},
-                  {"cautions", "what a reader must know beside the numbers",
-                   array<View>(diagnostic_part(),
-                               [](V v) -> const std::vector<Diagnostic>& { return v.analysis->cautions; })}});
+      "",
+      head_fields<View>("pool") +
+          std::vector<Field<View>>{
+              {"input", "what was read: with priors and options, all it takes to repeat the run",
+               of_analysis(input_part(), [](A a) -> const Input& { return a.input; })},
+              {"priors", "what was assumed before the data",
+               of_analysis(priors_part(), [](A a) -> const Priors& { return a.options.priors; })},
+              {"options", "what was asked for",
+               of_analysis(analysis_options_part(), [](A a) -> const AnalysisOptions& { return a.options; })},
+              {"left_out", "labels of the studies that were left out",
+               array<View>(text<std::string>([](const std::string& s) { return std::string_view(s); }),
+                           [](V v) -> const std::vector<std::string>& { return v.analysis->left_out; })},
+              {"verdict", "the two questions, answered in a sentence each",
+               of_analysis(verdict_part(), [](A a) -> const Analysis& { return a; })},
+              {"accurate", "false when an integral missed its promised accuracy",
+               boolean<View>([](V v) { return v.analysis->result.accurate; })},
+              {"studies", "the studies that were pooled", array<View>(study_part(), study_views)},
+              {"models", "the four models",
+               array<View>(model_part(),
+                           [](V v) -> const std::array<ModelResult, model_count>& {
+                             return v.analysis->result.models;
+                           })},
+              {"evidence",
+               "Bayes factors: posterior odds over prior odds of the class; null when not identified",
+               of_analysis(evidence_part(), [](A a) -> const PoolResult& { return a.result; })},
+              {"pooled", "what is known after the data",
+               of_analysis(pooled_part(), [](A a) -> const PoolResult& { return a.result; })},
+              {"cautions", "what a reader must know beside the numbers",
+               array<View>(diagnostic_part(),
+                           [](V v) -> const std::vector<Diagnostic>& { return v.analysis->cautions; })}});
   return part;
 }
 

@@ -52,8 +52,8 @@ std::string finding_lines(const Check& check, const Finding& finding, const Text
   const std::string head = fmt::format("{} (line {}): {} [{}]", row_label(table, finding.row),
                                        table.rows[finding.row].line, to_text(finding.grade), finding.rule);
   std::string text = toned(shown(head, style), tone, style) + '\n';
-  text += paragraph(finding.what, style, 2, 2);
-  if (!finding.remedy.empty()) text += paragraph(finding.remedy, style, 2, 2);
+  text += paragraph(finding.what, style, 2);
+  if (!finding.remedy.empty()) text += paragraph(finding.remedy, style, 2);
   return text;
 }
 
@@ -61,9 +61,9 @@ std::string row_lines(const Study& study, const TextStyle& style) {
   std::string text =
       paragraph(fmt::format("{} (line {}): {}", study.label, study.line, study.how), style, 0, 2);
   for (const AlternativeRoute& other : study.alternatives) {
-    text += paragraph(fmt::format("The row also gives t = {:.4g} by {}.", other.t, other.route), style, 2, 2);
+    text += paragraph(fmt::format("The row also gives t = {:.4g} by {}.", other.t, other.route), style, 2);
   }
-  for (const std::string& caution : study.cautions) text += paragraph("Caution: " + caution, style, 2, 2);
+  for (const std::string& caution : study.cautions) text += paragraph("Caution: " + caution, style, 2);
   return text;
 }
 

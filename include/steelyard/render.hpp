@@ -2,7 +2,9 @@
 #pragma once
 
 #include <cstddef>
+#include <optional>
 #include <string>
+#include <vector>
 
 #include "steelyard/analysis.hpp"
 #include "steelyard/figure.hpp"
@@ -25,6 +27,11 @@ struct TextStyle {
 /// `check` for people: how each row is read, and what does not agree. Ends with a newline.
 [[nodiscard]] std::string render_text(const Check& check, const TextStyle& style = {});
 
+/// `weigh`, `stress` and `replicate` for people: the answer in a sentence, then the tables.
+[[nodiscard]] std::string render_text(const WeighAnalysis& analysis, const TextStyle& style = {});
+[[nodiscard]] std::string render_text(const StressAnalysis& analysis, const TextStyle& style = {});
+[[nodiscard]] std::string render_text(const ReplicateAnalysis& analysis, const TextStyle& style = {});
+
 /// `pool` for machines; the fields are described in docs/json.md.
 [[nodiscard]] std::string render_json(const Analysis& analysis);
 
@@ -33,8 +40,8 @@ enum class FigureWidth { one_column, two_columns };
 
 struct SvgStyle {
   FigureWidth width = FigureWidth::two_columns;
-  bool embedded = false;          ///< for the inside of an HTML page that carries `svg_stylesheet()`
-  std::string id = "steelyard";   ///< letters, digits, '-'; begins every id in the file
+  bool embedded = false;         ///< for the inside of an HTML page that carries `svg_stylesheet()`
+  std::string id = "steelyard";  ///< letters, digits, '-'; begins every id in the file
 };
 
 /// A whole SVG file, ends with a newline; the same bytes for the same input.
@@ -45,6 +52,21 @@ struct SvgStyle {
 [[nodiscard]] std::string render_svg(const figure::Ladder& ladder, const SvgStyle& style = {});
 [[nodiscard]] std::string render_svg(const figure::Sway& sway, const SvgStyle& style = {});
 [[nodiscard]] std::string render_svg(const figure::PriorMap& map, const SvgStyle& style = {});
+
+/// Everything that a report shows. What is empty or absent is left out, and the report says so.
+struct Report {
+  Analysis analysis;
+  std::string command;                     ///< as typed, to get the same again
+  std::vector<figure::Answer> cumulative;  ///< in order of arrival, the last one with all studies
+  std::vector<figure::Answer> without;     ///< all but one study each
+  std::optional<figure::PriorGrid> prior_grid;
+};
+
+/// One self-contained HTML file: no network, all content without JavaScript; ends with a newline.
+[[nodiscard]] std::string render_html(const Report& report);
+
+/// The same in Markdown (CommonMark with tables), without figures.
+[[nodiscard]] std::string render_markdown(const Report& report);
 
 /// The style rules of all figures, light and dark, for a page that embeds them.
 [[nodiscard]] std::string svg_stylesheet();

@@ -155,14 +155,18 @@ void add_exact(const ExactT& e, double sign, double spread, std::span<const doub
   const double s = inflation(e.n_effective, spread);
   const double per_mean = std::sqrt(e.n_effective) / s;
   const double log_s = std::log(s);
-  const bool inside = std::all_of(means.begin(), means.end(), [per_mean](double mean) {
-    return std::abs(mean * per_mean) <= largest_noncentrality;
-  });
-  if (inside) {
-    numeric::add_log_noncentral_t(sign * e.t / s, e.df, per_mean, means, out);
-  } else {
-    for (std::size_t j = 0; j < means.size(); ++j) {
+  const auto inside = [per_mean](double mean) { return std::abs(mean * per_mean) <= largest_noncentrality; };
+  // Runs of means inside the kernel's domain go to it at once, the others one by one.
+  for (std::size_t j = 0; j < means.size();) {
+    std::size_t end = j;
+    while (end < means.size() && inside(means[end])) ++end;
+    if (end > j) {
+      numeric::add_log_noncentral_t(sign * e.t / s, e.df, per_mean, means.subspan(j, end - j),
+                                    out.subspan(j, end - j));
+      j = end;
+    } else {
       out[j] += log_density_t(sign * e.t / s, e.df, means[j] * per_mean);
+      ++j;
     }
   }
   for (double& value : out) value -= log_s;

@@ -96,7 +96,12 @@ std::vector<double> mean_breaks(std::span<const Study> studies, const PriorShape
   const auto panels = static_cast<int>(std::clamp(std::ceil(core / width), 8.0, most));
   std::vector<double> breaks;
   for (int i = 0; i <= panels; ++i) breaks.push_back(e.low + core * i / panels);
-  for (double reach = core / panels; reach < 1e6 * (core + s.scale); reach *= 1.6) {
+  // A t or an estimate leaves nothing far out; under a bound alone the prior's tail has to be followed.
+  const bool any_bound = std::any_of(studies.begin(), studies.end(), [](const Study& study) {
+    return std::holds_alternative<BandT>(study.evidence);
+  });
+  const double farthest = (any_bound ? 1e6 : 30.0) * (core + s.scale);
+  for (double reach = core / panels; reach < farthest; reach *= 1.6) {
     breaks.push_back(e.high + reach);
     breaks.push_back(e.low - reach);
   }

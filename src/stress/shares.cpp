@@ -79,8 +79,8 @@ void gather(Gathered& set, std::span<const double> sum, const Block& block, std:
 template <class Visit>
 bool walk(std::span<const Study> studies, const Priors& priors, const std::function<bool()>& keep_going,
           Visit visit) {
-  const Axis means = mean_axis(studies, priors.effect, 6);
-  const Axis spreads = spread_axis(studies, priors.spread, 6);
+  const Axis means = mean_axis(studies, priors.effect, 4);
+  const Axis spreads = spread_axis(studies, priors.spread, 4);
   const bool random = priors.model[2] + priors.model[3] > 0.0 && studies.size() > 1;
   std::vector<double> at = means.x;
   at.push_back(0.0);

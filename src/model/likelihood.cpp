@@ -82,11 +82,13 @@ struct Seen {
   }
 };
 
+constexpr Seen everything = {{Interval{-infinity, infinity}, {}}, 1};
+
 Seen seen(const Likelihood& likelihood) {
-  if (!likelihood.selected_above) return {{Interval{-infinity, infinity}, {}}, 1};
+  if (!likelihood.selected_above) return everything;
   const double c = *likelihood.selected_above;
   if (likelihood.selected_upper_only) return {{Interval{c, infinity}, {}}, 1};
-  if (c <= 0.0) return {{Interval{-infinity, infinity}, {}}, 1};
+  if (c <= 0.0) return everything;
   return {{Interval{-infinity, -c}, Interval{c, infinity}}, 2};
 }
 
@@ -193,7 +195,61 @@ void add_estimate(const NormalEstimate& e, double spread, std::span<const double
   }
 }
 
-bool is_plain(const Likelihood& likelihood) { return likelihood.power == 1.0 && !likelihood.selected_above; }
+// Without power and selection.
+void add_plain(const Evidence& evidence, double spread, std::span<const double> means,
+               std::span<double> out) {
+  std::visit(Overloaded{[&](const ExactT& e) {
+                          if (e.folded) {
+                            add_folded(e, spread, means, out);
+                          } else {
+                            add_exact(e, 1.0, spread, means, out);
+                          }
+                        },
+                        [&](const BandT& e) {
+                          for (std::size_t j = 0; j < means.size(); ++j) {
+                            out[j] += log_part(e, means[j], spread, everything);
+                          }
+                        },
+                        [&](const NormalEstimate& e) {
+                          if (!e.folded) {
+                            add_estimate(e, spread, means, out);
+                            return;
+                          }
+                          for (std::size_t j = 0; j < means.size(); ++j) {
+                            out[j] += log_part(e, means[j], spread, everything);
+                          }
+                        }},
+             evidence);
+}
+
+// Whether nothing that the evidence allows was hidden by the selection.
+bool wholly_seen(const Evidence& evidence, const Seen& region) {
+  const auto* exact = std::get_if<ExactT>(&evidence);
+  return exact != nullptr && region.contains(exact->t) && (!exact->folded || region.contains(-exact->t));
+}
+
+// With power or selection: what is plain about it goes through the fast kernels, block by block.
+void add_changed(const Likelihood& likelihood, double spread, std::span<const double> means,
+                 std::span<double> out) {
+  if (likelihood.power == 0.0) return;
+  const Seen region = seen(likelihood);
+  const bool split = !likelihood.selected_above || wholly_seen(likelihood.evidence, region);
+  for (std::size_t start = 0; start < means.size(); start += block) {
+    const std::size_t count = std::min(block, means.size() - start);
+    const std::span<const double> some = means.subspan(start, count);
+    std::array<double, block> values{};
+    if (split) add_plain(likelihood.evidence, spread, some, {values.data(), count});
+    for (std::size_t j = 0; j < count; ++j) {
+      values[j] += std::visit(
+          [&](const auto& e) {
+            const double part = split ? 0.0 : log_part(e, some[j], spread, region);
+            return likelihood.selected_above ? part - log_region(e, some[j], spread, region) : part;
+          },
+          likelihood.evidence);
+      out[start + j] += likelihood.power * values[j];
+    }
+  }
+}
 
 }  // namespace
 
@@ -214,22 +270,11 @@ double log_likelihood(const Likelihood& likelihood, double mean, double spread) 
 
 void add_log_likelihood(const Likelihood& likelihood, double spread, std::span<const double> means,
                         std::span<double> out) {
-  if (is_plain(likelihood)) {
-    if (const auto* exact = std::get_if<ExactT>(&likelihood.evidence)) {
-      if (exact->folded) {
-        add_folded(*exact, spread, means, out);
-      } else {
-        add_exact(*exact, 1.0, spread, means, out);
-      }
-      return;
-    }
-    const auto* estimate = std::get_if<NormalEstimate>(&likelihood.evidence);
-    if (estimate != nullptr && !estimate->folded) {
-      add_estimate(*estimate, spread, means, out);
-      return;
-    }
+  if (likelihood.power == 1.0 && !likelihood.selected_above) {
+    add_plain(likelihood.evidence, spread, means, out);
+  } else {
+    add_changed(likelihood, spread, means, out);
   }
-  for (std::size_t j = 0; j < means.size(); ++j) out[j] += log_likelihood(likelihood, means[j], spread);
 }
 
 }  // namespace steelyard

@@ -49,8 +49,11 @@ std::optional<ImpliedP> implied_p(const RowView& row) {
       p_of(absolute, df->range, normal_too, rebuilding::two_sided_p, rebuilding::two_sided_p_normal);
   const int direction = rebuilding::stated_sign(row.x);
   const bool directed = direction != 0 && !from->is_sized && says_one_tailed(row);
-  const Range t = !directed ? absolute : direction > 0 ? from->t : negate(from->t);
-  implied.one_tailed = p_of(t, df->range, normal_too, rebuilding::upper_p, normal_one);
+  implied.one_tailed = times(implied.two_tailed, 0.5);
+  if (directed) {
+    const Range t = direction > 0 ? from->t : negate(from->t);
+    implied.one_tailed = p_of(t, df->range, normal_too, rebuilding::upper_p, normal_one);
+  }
   return implied;
 }
 

@@ -11,8 +11,9 @@ constexpr std::string_view id = "one-tailed-p";
 
 void check(const RowView& row) {
   const auto p = printed_p(row);
+  if (!p) return;
   const auto implied = implied_p(row);
-  if (!p || !implied) return;
+  if (!implied) return;
   const bool one = says_one_tailed(row);
   const Range& expected = one ? implied->one_tailed : implied->two_tailed;
   const Range& other = one ? implied->two_tailed : implied->one_tailed;

@@ -12,8 +12,9 @@ constexpr double line = 0.05;
 
 void check(const RowView& row) {
   const auto p = printed_p(row);
+  if (!p) return;
   const auto implied = implied_p(row);
-  if (!p || !implied) return;
+  if (!implied) return;
   const Range& expected = says_one_tailed(row) ? implied->one_tailed : implied->two_tailed;
   if (meet(*p, expected)) return;
   const bool loses = p->high <= line && expected.low > line;

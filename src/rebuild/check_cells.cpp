@@ -79,6 +79,13 @@ class Checker {
           "Give the number itself, or leave the cell empty.");
   }
 
+  void not_ns(Col col) {
+    const Cell* cell = facts_.cell(col);
+    if (cell == nullptr || cell->printed.relation != Relation::not_significant) return;
+    error(col, "ns-not-usable", fmt::format("{}: only a p can be \"not significant\".", quoted(col)),
+          "Put it into the column p.");
+  }
+
   std::vector<Diagnostic> take() { return std::move(found_); }
 
  private:
@@ -124,6 +131,7 @@ std::vector<Diagnostic> check_cells(const Facts& facts) {
     const Col col = static_cast<Col>(i);
     if (facts.present(col) && !carries_no_number(col) && !may_be_bound(col)) check.not_a_bound(col);
   }
+  for (const Col col : {Col::t, Col::f}) check.not_ns(col);
   for (const Col col : {Col::sd1, Col::se1, Col::sd2, Col::se2, Col::sd_diff, Col::se_diff, Col::se,
                         Col::baseline_sd1, Col::baseline_sd2, Col::sd3, Col::se3, Col::sd4, Col::se4,
                         Col::sd5, Col::se5, Col::sd6, Col::se6, Col::odds_ratio}) {

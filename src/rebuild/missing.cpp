@@ -42,6 +42,16 @@ bool within(const std::vector<std::string>& part, const std::vector<std::string>
   });
 }
 
+// Routes that nobody would fill cells for: of one sample where two groups are given, or variants of a plainer
+// route.
+bool worth_offering(const Route& route, const Numbers& x) {
+  const auto has = [&](Col col) {
+    return std::find(route.core.begin(), route.core.end(), col) != route.core.end();
+  };
+  if (has(Col::compare) || has(Col::welch)) return false;
+  return !(x.has(Col::n2) && has(Col::mean1) && !has(Col::mean2));
+}
+
 // The smallest additions that open a route, those that build on what the row has first.
 std::vector<std::string> offers(const Numbers& x) {
   struct Offer {
@@ -51,7 +61,7 @@ std::vector<std::string> offers(const Numbers& x) {
   std::vector<Offer> all;
   for (const Route& route : registry()) {
     auto missing = missing_of(route, x);
-    if (missing.empty()) continue;
+    if (missing.empty() || !worth_offering(route, x)) continue;
     const bool builds_on = missing.size() < route.core.size();
     const bool known =
         std::any_of(all.begin(), all.end(), [&](const Offer& o) { return within(o.missing, missing); });

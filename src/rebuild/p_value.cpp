@@ -1,5 +1,7 @@
 #include "rebuild/p_value.hpp"
 
+#include <fmt/format.h>
+
 #include <algorithm>
 #include <limits>
 
@@ -25,7 +27,8 @@ std::optional<PBand> p_band(Numbers& x) {
     band.high = std::min(p.high, 1.0);
   }
   if (band.low <= band.high && band.low < 1.0 && band.high > 0.0) return band;
-  x.refuse(Col::p, "p-out-of-range", "No p value between 0 and 1 fits this cell.", "Correct p.");
+  x.refuse(Col::p, "p-out-of-range",
+           fmt::format("p is {}, but a p value lies between 0 and 1.", x.facts().text(Col::p)), "Correct it.");
   return std::nullopt;
 }
 

@@ -22,17 +22,26 @@ static ld log_mass(ld nu, ld z) {
   return logl(total * step);
 }
 
-void tabulate(ld nu, int first, int pieces, int terms, ld piece, const ld* nodes, ld* values) {
-  for (int p = 0; p < pieces; ++p)
-    for (int k = 0; k < terms; ++k)
-      values[p * terms + k] = log_mass(nu, (first + p + 0.5L + nodes[k] / 2) * piece);
-}
-
 typedef struct {
   ld nu, root, constant, piece; /* root: of nu */
   int first, pieces, terms;
-  const ld* coefficients;
+  const ld *nodes, *matrix; /* Chebyshev nodes, and the matrix from values there to coefficients */
+  ld* coefficients;         /* a row of terms for each piece, NaN until it is needed */
 } table;
+
+static const ld* coefficients_of(const table* k, int p) {
+  ld* c = k->coefficients + p * k->terms;
+  if (isnan(c[0])) {
+    ld values[64];
+    for (int j = 0; j < k->terms; ++j)
+      values[j] = log_mass(k->nu, (k->first + p + 0.5L + k->nodes[j] / 2) * k->piece);
+    for (int m = 0; m < k->terms; ++m) {
+      c[m] = 0;
+      for (int j = 0; j < k->terms; ++j) c[m] += k->matrix[m * k->terms + j] * values[j];
+    }
+  }
+  return c;
+}
 
 /* What depends on the scaled t alone. */
 typedef struct {
@@ -53,7 +62,7 @@ static ld log_density(const table* k, scaled at, ld ncp) {
   const ld z = logl(w0 / k->root), place = z / k->piece - k->first;
   const int p = (int)floorl(place);
   if (!(place >= 0) || p >= k->pieces) return -1e18L;
-  const ld* c = k->coefficients + p * k->terms;
+  const ld* c = coefficients_of(k, p);
   const ld x = 2 * (place - p) - 1;
   ld last = 0, value = c[k->terms - 1];
   for (int m = k->terms - 2; m > 0; --m) {

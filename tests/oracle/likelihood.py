@@ -41,20 +41,25 @@ LDP = ctypes.POINTER(ctypes.c_longdouble)
 
 
 def pointer(array):
-    return array.ctypes.data_as(ctypes.c_void_p)
+    return ctypes.c_void_p(array.ctypes.data)
 
 
 class Table(ctypes.Structure):
     _fields_ = [("nu", ctypes.c_longdouble), ("root", ctypes.c_longdouble), ("constant", ctypes.c_longdouble), ("piece", ctypes.c_longdouble),
                 ("first", ctypes.c_int), ("pieces", ctypes.c_int), ("terms", ctypes.c_int),
-                ("coefficients", ctypes.c_void_p)]
+                ("nodes", ctypes.c_void_p), ("matrix", ctypes.c_void_p), ("coefficients", ctypes.c_void_p)]
+
+
+_SCALARS = {}
 
 
 def c_ld(x):
-    """ctypes turns Python floats into long doubles: exact for doubles, which all scalars but one are."""
-    value = ctypes.c_longdouble()
-    ctypes.memmove(ctypes.byref(value), np.array([LD(x)]).ctypes.data, 16)
-    return value
+    """A scalar as C wants it, with all its bits."""
+    if x not in _SCALARS:
+        value = ctypes.c_longdouble()
+        ctypes.memmove(ctypes.byref(value), np.array([LD(x)]).ctypes.data, 16)
+        _SCALARS[x] = value
+    return _SCALARS[x]
 
 
 def _chebyshev(terms):
@@ -77,14 +82,13 @@ class Exact:
             nu = mp.mpf(self.df)
             constant = ld(-mp.log(mp.pi) / 2 - mp.loggamma(nu / 2) - (nu - 1) / 2 * mp.log(2) - nu / 2
                           + nu / 2 * mp.log(nu))
-        values = np.empty((PIECES, TERMS), dtype=LD)
-        C.tabulate(c_ld(self.df), FIRST, PIECES, TERMS, c_ld(PIECE), pointer(NODES), pointer(values))
-        self.coefficients = np.ascontiguousarray(values @ TO_COEFFICIENTS.T)
+        self.coefficients = np.full((PIECES, TERMS), LD("nan"))
         self.table = Table()
         for name, value in (("nu", self.df), ("root", np.sqrt(LD(self.df))), ("constant", constant), ("piece", PIECE)):
             offset = getattr(Table, name).offset
             ctypes.memmove(ctypes.addressof(self.table) + offset, np.array([LD(value)]).ctypes.data, 16)
         self.table.first, self.table.pieces, self.table.terms = FIRST, PIECES, TERMS
+        self.table.nodes, self.table.matrix = NODES.ctypes.data, TO_COEFFICIENTS.ctypes.data
         self.table.coefficients = self.coefficients.ctypes.data
 
     def add(self, mean, spread, out):

@@ -317,7 +317,7 @@ class Analysis:
             low = max(low, math.log(self.spread.low))
         if math.isfinite(self.spread.high):
             high = min(high, math.log(self.spread.high))
-        return np.linspace(low, max(high, low + 1e-9), 40)
+        return np.linspace(low, max(high, low + 1e-9), 28)
 
     def _extent(self):
         centers = [c for s in self.studies for c in s.centers()]
@@ -339,7 +339,7 @@ class Analysis:
             values = self._log_at(grid, v)
             peaks = [i for i in range(len(grid)) if (i == 0 or values[i] >= values[i - 1])
                      and (i + 1 == len(grid) or values[i] > values[i + 1])]
-            for i in sorted(peaks, key=lambda i: -values[i])[:6]:
+            for i in sorted((i for i in peaks if values[i] > values.max() - 60), key=lambda i: -values[i])[:4]:
                 found.append(self._refine(grid[max(i - 1, 0)], grid[min(i + 1, len(grid) - 1)], v))
         return found
 
@@ -348,27 +348,26 @@ class Analysis:
         return self.effect(mean) + log_likelihood(self.studies, mean, np.exp(LD(v)))
 
     def _refine(self, low, high, v):
-        for _ in range(12):
-            mean = np.linspace(low, high, 9)
+        for _ in range(7):
+            mean = np.linspace(low, high, 17)
             values = self._log_at(mean, v)
             i = int(np.argmax(values))
-            low, high = mean[max(i - 1, 0)], mean[min(i + 1, 8)]
+            low, high = mean[max(i - 1, 0)], mean[min(i + 1, 16)]
             if high - low < 1e-9 * (1 + abs(high)):
                 break
         value = values[i]
         if v > -60:
             value = value + self.spread(np.exp(LD(v)), LD(v)) + LD(v)
-        width = 1e-6
-        while width < 1e6 and value - self._with_spread(mean[i], width, v) < 0.5:
-            width *= 2
-        return mean[i], v, float(value), width
+        return mean[i], v, float(value), self._fall(mean[i], values[i], v)
 
-    def _with_spread(self, mean, width, v):
-        values = self._log_at(np.array([mean - width, mean + width]), v)
-        value = values.max() if self.effect.low <= mean - width and mean + width <= self.effect.high else values.min()
-        if v > -60:
-            value = value + self.spread(np.exp(LD(v)), LD(v)) + LD(v)
-        return value
+    def _fall(self, mean, value, v):
+        """About how far from a maximum the integrand has fallen by the half power of e."""
+        widths = 2.0 ** np.arange(-20, 20)
+        places = np.concatenate([mean - widths, mean + widths])
+        drop = (value - self._log_at(places, v)).reshape(2, -1)
+        drop[((places < self.effect.low) | (places > self.effect.high)).reshape(2, -1)] = LD(0)
+        far = drop.max(axis=0) >= 0.5
+        return float(widths[int(np.argmax(far))]) if far.any() else float(widths[-1])
 
     # Integrands.
     def _log_jacobian(self, x):
@@ -407,9 +406,9 @@ class Analysis:
         for p in [*inside, high]:
             if p - cuts[-1] < 0.05 and p is not high:
                 continue
-            gap = p - cuts[-1]
-            pieces = int(np.ceil(gap / step))
-            cuts.extend(cuts[-1] + gap * (k + 1) / pieces for k in range(pieces))
+            start, gap = cuts[-1], p - cuts[-1]
+            pieces = max(1, int(np.ceil(gap / step)))
+            cuts += [start + gap * (k + 1) / pieces for k in range(pieces - 1)] + [p]
         return cuts
 
     def _x_places(self, modes):
@@ -446,7 +445,7 @@ class Analysis:
 
     def _prune(self, boxes):
         """Leaves out boxes in whose neighbourhood nothing is left of the integrand."""
-        t = np.array([-0.98, -0.6, 0.0, 0.6, 0.98], dtype=LD)
+        t = np.array([-0.95, 0.0, 0.95], dtype=LD)
         x = (boxes[:, 0:1] + boxes[:, 1:2]) / 2 + (boxes[:, 1:2] - boxes[:, 0:1]) / 2 * t
         v = (boxes[:, 2:3] + boxes[:, 3:4]) / 2 + (boxes[:, 3:4] - boxes[:, 2:3]) / 2 * t
         x, v = np.broadcast_arrays(x[:, None, :], v[:, :, None])

@@ -16,8 +16,9 @@ class Answers:
         self.a = analysis
         self.fixed, self.random = analysis.fixed(), analysis.random()
         gap = self.random.log_total - self.fixed.log_total
-        self.p_random = 1 / (1 + np.exp(-gap))
-        self.p_fixed = 1 / (1 + np.exp(gap))
+        with np.errstate(over="ignore"):
+            self.p_random = 1 / (1 + np.exp(-gap))
+            self.p_fixed = 1 / (1 + np.exp(gap))
 
     def effect_below(self, which, mean):
         x = self.a.to_x(mean)

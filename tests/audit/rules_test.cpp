@@ -135,6 +135,9 @@ TEST_CASE("what honest authors do is not called impossible") {
       "t,df,p\n2.10,54,.040",
       // half up and half to even
       "mean1,n,items\n2.12,8,1", "mean1,n,items\n2.13,8,1",
+      // Student (1908), sleep: as R's t.test prints it, Welch's test with its interval, means and SDs
+      "t,df,p,mean1,sd1,n1,mean2,sd2,n2\n-1.8608,17.776,0.07939,0.75,1.789,10,2.33,2.002,10",
+      "t,df,p,mean_diff,ci_low,ci_high,n1,n2\n-1.8608,17.776,0.07939,-1.58,-3.365,0.205,10,10",
       // SD by n instead of n − 1
       "mean1,sd1,n,items\n2.00,0.82,3,1"};
   for (const char* row : rows) {

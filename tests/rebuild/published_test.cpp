@@ -107,3 +107,16 @@ TEST_CASE("Student's sleep data") {
                     help::exactly(sd(differences)) + ",10"))
             .t == printed(-4.0621, 4));
 }
+
+// R's t.test(extra ~ group, data = sleep) prints Welch's t = -1.8608, df = 17.776, p-value = 0.07939. With
+// ten in each group that t is the pooled one.
+TEST_CASE("Student's sleep data by Welch's test") {
+  const auto t = study("study,t,df,n1,n2\nA,-1.8608,17.776,10,10");
+  CHECK(t.route == "welch-equal-sizes");
+  CHECK(exact(t).t == -1.8608);
+  CHECK(exact(t).df == 18.0);
+  const auto p = study("study,p,df,n1,n2,sign\nA,0.07939,17.776,10,10,-");
+  CHECK(exact(p).t == printed(-1.8608, 4));
+  const auto ci = study("study,mean_diff,ci_low,ci_high,df,n1,n2\nA,-1.58,-3.3654832,0.2054832,17.776,10,10");
+  CHECK(exact(ci).t == printed(-1.8608, 4));
+}

@@ -172,6 +172,16 @@ double log_band(const DensityKernel& kernel, double low, double high, double df,
   return peak.log_value + std::log(sum);
 }
 
+/// Whether P(T ≤ t) is below 1e-17, for certain. T = (Z + ncp)/S: either Z < −9, or S exceeds (ncp − 9)/t,
+/// and P(S > x) ≤ exp(−(df/2)·(x² − 1 − log x²)) for x > 1 (the Chernoff bound of the chi-squared tail).
+bool hardly_ever_below(double t, double df, double ncp) {
+  constexpr double z = 9.0;
+  if (!(ncp > z)) return false;
+  if (t <= 0.0) return true;
+  const double x = (ncp - z) / t;
+  return x > 1.0 && 0.5 * df * (x * x - 1.0 - 2.0 * std::log(x)) > 40.0;
+}
+
 bool in_domain(double df, double ncp) { return df >= 1.0 && std::fabs(ncp) <= 1e6; }
 
 }  // namespace
@@ -179,6 +189,8 @@ bool in_domain(double df, double ncp) { return df >= 1.0 && std::fabs(ncp) <= 1e
 double DensityKernel::log_band(double low, double high, double ncp) const {
   if (!(low < high)) return -infinity;
   if (low == -infinity && high == infinity) return 0.0;
+  if (high == infinity && hardly_ever_below(low, constants_.df, ncp)) return 0.0;
+  if (low == -infinity && hardly_ever_below(-high, constants_.df, -ncp)) return 0.0;
   return numeric::log_band(*this, low, high, constants_.df, ncp);
 }
 

@@ -17,6 +17,8 @@ namespace steelyard::pool_room {
 namespace {
 
 constexpr double infinity = std::numeric_limits<double>::infinity();
+/// Noncentralities beyond this are left to the room model, which follows the limit.
+constexpr double farthest_ncp = 1e6;
 constexpr std::size_t block = 64;  // nodes that are worked on at once
 
 /// What the canonical order of the studies sorts by. The size of t comes before its sign, so that
@@ -110,7 +112,7 @@ void Field::add(const Likelihood& study) {
       approximation = {nearest / root, 100.0 / b->n_effective / weight};
     if (is_plain(study)) {
       entry = {Kind::band, bands_.size()};
-      bands_.push_back({numeric::DensityKernel(b->df), b->n_effective, root, b->bands});
+      bands_.push_back({numeric::DensityKernel(b->df), b->df, b->n_effective, root, b->bands});
     }
   } else if (const auto* n = std::get_if<NormalEstimate>(&study.evidence)) {
     approximation = {n->estimate, n->se * n->se / weight};
@@ -150,10 +152,17 @@ void Field::evaluate_entry(const Entry& entry, double spread, std::span<const do
       const Band& b = bands_[entry.index];
       const double s = std::sqrt(1.0 + b.n_effective * spread * spread);
       for (std::size_t j = 0; j < means.size(); ++j) {
+        if (std::fabs(means[j] * b.root_n / s) > farthest_ncp) {
+          out[j] += log_likelihood({BandT{b.bands, b.df, b.n_effective}, 1.0, {}, false}, means[j], spread);
+          continue;
+        }
+        // From the side of the mean: once all probability is found the rest can't add any.
         double sum = -infinity;
-        for (const Interval& band : b.bands)
+        for (std::size_t i = 0; i < b.bands.size() && sum < 0.0; ++i) {
+          const Interval& band = b.bands[means[j] > 0.0 ? b.bands.size() - 1 - i : i];
           sum =
               numeric::log_add(sum, b.kernel.log_band(band.low / s, band.high / s, means[j] * b.root_n / s));
+        }
         out[j] += sum;
       }
       return;
@@ -213,7 +222,7 @@ void Field::evaluate_one(std::size_t study, double spread, std::span<const doubl
 
 double Field::rounding(double spread, double mean) const {
   double sum = 0.0;
-  for (std::size_t i = 0; i < entries_.size(); ++i) {
+  for (const std::size_t i : order_) {
     double value = 0.0;
     evaluate_entry(entries_[i], spread, {&mean, 1}, {&value, 1});
     const double variance = approximations_[i].variance + spread * spread;
@@ -226,7 +235,8 @@ double Field::rounding(double spread, double mean) const {
 Guess Field::guess(double spread) const {
   double weights = 0.0;
   double sum = 0.0;
-  for (const Approximation& a : approximations_) {
+  for (const std::size_t i : order_) {
+    const Approximation& a = approximations_[i];
     const double w = 1.0 / (a.variance + spread * spread);
     weights += w;
     sum += w * (folded_ ? std::fabs(a.estimate) : a.estimate);
@@ -248,7 +258,7 @@ bool Field::bounds(std::size_t study) const {
 std::vector<double> Field::variances() const {
   std::vector<double> out;
   out.reserve(entries_.size());
-  for (std::size_t i = 0; i < entries_.size(); ++i) {
+  for (const std::size_t i : order_) {
     const Entry& entry = entries_[i];
     if (entry.kind == Kind::exact || entry.kind == Kind::folded)
       out.push_back(1.0 / exact_[entry.index].n_effective);

@@ -60,7 +60,7 @@ class Field {
   };
   struct Band {
     numeric::DensityKernel kernel;
-    double n_effective, root_n;
+    double df, n_effective, root_n;
     std::vector<Interval> bands;
   };
   struct Estimate {

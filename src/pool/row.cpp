@@ -125,11 +125,12 @@ Row make_row(const Field& field, const PriorBlock& prior, double spread, const s
     prior.add(x, out);
   };
   std::vector<double> breaks{window.low, window.high};
-  // A window that is much longer than its peak is wide gets the peak as panels of its own.
-  for (const double offset : {-12.0, 12.0}) {
-    const double x = window.best + offset * window.width;
-    if (x > window.low + window.width && x < window.high - window.width) breaks.push_back(x);
-  }
+  // A window that is much longer than its peak is wide gets the peak and its surroundings as panels of their
+  // own: far out the likelihood is often flat, and one panel then serves a very long way.
+  for (const double offset : {12.0, 60.0, 1000.0})
+    for (const double x : {window.best - offset * window.width, window.best + offset * window.width})
+      if (x > window.low + 0.5 * offset * window.width && x < window.high - 0.5 * offset * window.width)
+        breaks.push_back(x);
   std::sort(breaks.begin(), breaks.end());
   numeric::LogCurve::Need need;
   need.tolerance = 1e-12;

@@ -23,7 +23,7 @@ struct SearchSpace {
   double low = -std::numeric_limits<double>::infinity();  ///< the integrand is −infinity outside
   double high = std::numeric_limits<double>::infinity();
   std::vector<double> start;  ///< points to look at first: every feature must have one within reach
-  double drop = 40.0;         ///< nats below the peak beyond which the integrand doesn't count
+  double drop = 36.0;         ///< nats below the peak beyond which the integrand doesn't count
   std::function<void(std::span<const double>, std::span<double>)> log_integrand;
 };
 

@@ -128,3 +128,12 @@ TEST_CASE("posteriors of random meta-analyses keep the promised accuracy", "[acc
   check(tally.probabilities, "probabilities", 400);
   check(tally.shrunken, "shrunken effects", 20);
 }
+
+TEST_CASE("posteriors of hard shapes keep the promised accuracy", "[accuracy]") {
+  const Tally tally = tally_of("hard_shapes.csv");
+  check(tally.means, "means", 30);
+  check(tally.sds, "standard deviations", 30);
+  check(tally.quantiles, "quantiles", 100);
+  check(tally.probabilities, "probabilities", 100);
+  check(tally.shrunken, "shrunken effects", 12);
+}

@@ -83,6 +83,10 @@ std::vector<Case> cases(const std::string& table) {
       study.label = "study " + std::to_string(result.back().studies.size() + 1);
       study.evidence = evidence(line);
       result.back().studies.push_back(study);
+    } else if (kind == "repeat") {
+      const steelyard::Study last = result.back().studies.back();
+      result.back().studies.resize(result.back().studies.size() - 1 + static_cast<std::size_t>(at(line, 1)),
+                                   last);
     } else {
       read_answer(result.back(), line);
     }

@@ -35,9 +35,20 @@ std::string with_df(const RowView& row, const Dfs& df) {
   return "";
 }
 
+// An F with several numerator df has a p of its own; one-tailed it isn't.
+std::optional<ImpliedP> of_omnibus_f(const RowView& row) {
+  if (!row.has(Col::f) || !row.has(Col::df)) return std::nullopt;
+  const double df1 = row.value(Col::df1);
+  const Range p =
+      over(std::array<Range, 2>{row.range(Col::f), row.range(Col::df)},
+           [df1](const std::array<double, 2>& v) { return rebuilding::upper_f(v[0], df1, v[1]); });
+  return ImpliedP{fmt::format("F({:g}, {}) = {}", df1, row.text(Col::df), row.text(Col::f)), p, p};
+}
+
 }  // namespace
 
 std::optional<ImpliedP> implied_p(const RowView& row) {
+  if (row.has(Col::df1) && row.value(Col::df1) != 1.0) return of_omnibus_f(row);
   const auto from = source(row);
   const auto df = dfs(row);
   if (!from || !df) return std::nullopt;

@@ -18,6 +18,7 @@ struct Limits {
 
 std::optional<Limits> limits(const RowView& row) {
   if (row.x.present(Col::compare) || row.has(Col::n3)) return std::nullopt;
+  if (row.has(Col::df1) && row.value(Col::df1) != 1.0) return std::nullopt;
   if (is_two_groups(row)) {
     if (!row.has(Col::n1) || !row.has(Col::n2)) return std::nullopt;
     const double a = row.value(Col::n1);

@@ -14,6 +14,7 @@ constexpr std::string_view id = "signs-disagree";
 struct Signed {
   std::string words;
   int sign;
+  bool often_unsigned = false;  // papers print sizes of d, g and r without their sign
 };
 
 int sign_of(const Range& range) { return range.low > 0.0 ? 1 : range.high < 0.0 ? -1 : 0; }
@@ -29,7 +30,11 @@ std::vector<Signed> all_signs(const RowView& row) {
     if (const auto diff = difference(row)) add(found, "the means", *diff);
   }
   for (const Col col : {Col::mean_diff, Col::t, Col::d, Col::g, Col::r}) {
-    if (row.has(col)) add(found, fmt::format("{} = {}", name(col), row.text(col)), row.range(col));
+    if (!row.has(col)) continue;
+    const std::size_t before = found.size();
+    add(found, fmt::format("{} = {}", name(col), row.text(col)), row.range(col));
+    const bool size = col == Col::d || col == Col::g || col == Col::r;
+    if (found.size() > before) found.back().often_unsigned = size;
   }
   if (rebuilding::ci_of(row.x) == rebuilding::CiOf::difference) {
     const Range low = row.range(Col::ci_low);
@@ -46,7 +51,8 @@ void check(const RowView& row) {
     if (signs[i].sign == signs[0].sign) continue;
     // Papers that print every size without its sign name the direction in words.
     if (rebuilding::stated_sign(row.x) < 0 && signs[i].sign > 0 && signs[0].sign < 0) continue;
-    row.report(id, Grade::changes_the_verdict,
+    const bool only_size = signs[i].often_unsigned && signs[i].sign > 0;
+    row.report(id, only_size ? Grade::worth_a_look : Grade::changes_the_verdict,
                fmt::format("{} {} positive, but {} {} negative.", signs[signs[0].sign > 0 ? 0 : i].words,
                            signs[signs[0].sign > 0 ? 0 : i].words == "the means" ? "are" : "is",
                            signs[signs[0].sign > 0 ? i : 0].words,

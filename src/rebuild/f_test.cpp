@@ -4,6 +4,8 @@
 
 namespace steelyard::rebuilding {
 
+bool is_of_two_means(Numbers& x) { return !x.has(Col::df1) || has_one_numerator_df(x); }
+
 bool has_one_numerator_df(Numbers& x) {
   if (!x.has(Col::df1)) {
     x.caution(Col::f, "df1-assumed",

@@ -9,4 +9,8 @@ namespace steelyard::rebuilding {
 /// an F with more: it mixes several contrasts and has no sign.
 [[nodiscard]] bool has_one_numerator_df(Numbers& x);
 
+/// False (with the reason) where the row's test is an F with more than one numerator df: then its p is
+/// that test's, and says nothing of two means either.
+[[nodiscard]] bool is_of_two_means(Numbers& x);
+
 }  // namespace steelyard::rebuilding

@@ -28,7 +28,8 @@ std::optional<PBand> p_band(Numbers& x) {
   }
   if (band.low <= band.high && band.low < 1.0 && band.high > 0.0) return band;
   x.refuse(Col::p, "p-out-of-range",
-           fmt::format("p is {}, but a p value lies between 0 and 1.", x.facts().text(Col::p)), "Correct it.");
+           fmt::format("p is {}, but a p value lies between 0 and 1.", x.facts().text(Col::p)),
+           "Correct it.");
   return std::nullopt;
 }
 

@@ -1,6 +1,7 @@
 // A printed p value: the t that has it, or the band of t that its digits allow.
 #include <fmt/format.h>
 
+#include "rebuild/f_test.hpp"
 #include "rebuild/p_value.hpp"
 #include "rebuild/routes.hpp"
 #include "rebuild/welch.hpp"
@@ -34,6 +35,7 @@ std::optional<Solution> solve(Numbers& x) {
   const auto frame = frame_of(x);
   const auto band = p_band(x);
   const auto kind = p_kind(x);
+  if (!is_of_two_means(x)) return std::nullopt;
   if (!frame || !band || !kind) return std::nullopt;
   if (band->low < band->high && width(*band, frame->df, *kind) > coarse_width) {
     say_coarse(x, *band);
@@ -49,6 +51,7 @@ std::optional<Solution> solve_bound(Numbers& x) {
   const auto frame = frame_of(x);
   const auto band = p_band(x);
   const auto kind = p_kind(x);
+  if (!is_of_two_means(x)) return std::nullopt;
   if (!frame || !band || !kind) return std::nullopt;
   return Solution{BandT{t_bands(*band, frame->df, *kind), frame->df, frame->n_effective}, frame->metric,
                   frame->design, frame->people, std::nullopt};

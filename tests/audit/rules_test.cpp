@@ -36,6 +36,8 @@ const std::vector<Case>& cases() {
   static const std::vector<Case> all = {
       {"p-against-test", impossible, "t,df,n1,n2,p\n2.20,28,15,15,.136", "t,df,n1,n2,p\n2.20,28,15,15,.036"},
       {"p-against-test", impossible, "f,df1,df,p\n4.41,1,58,<.01", "f,df1,df,p\n4.41,1,58,<.05"},
+      {"p-against-test", impossible, "f,df1,df,p\n3.20,2,57,.148", "f,df1,df,p\n3.20,2,57,.048"},
+      {"signs-disagree", look, "t,df,n1,n2,d\n-2.10,58,30,30,0.54", "t,df,n1,n2,d\n-2.10,58,30,30,-0.54"},
       {"one-tailed-p", look, "t,df,n1,n2,p\n2.20,28,15,15,.018",
        "t,df,n1,n2,p,tails,sign\n2.20,28,15,15,.018,1,+"},
       {"p-changes-side", verdict, "t,df,n1,n2,p\n1.80,28,15,15,.04", "t,df,n1,n2,p\n1.80,28,15,15,.08"},

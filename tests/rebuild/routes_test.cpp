@@ -88,6 +88,9 @@ TEST_CASE("F with one numerator df") {
   const auto several = help::rebuilt("study,f,df1,df,n1,n2\nA,4.41,2,57,30,30");
   CHECK_FALSE(several.ok());
   CHECK(help::says(several.diagnostics, "f-with-several-df"));
+  // nor does the p of such an F speak of two means
+  CHECK_FALSE(help::rebuilt("study,f,df1,df,p,n1,n2\nA,3.2,2,57,.048,20,20").ok());
+  CHECK_FALSE(help::rebuilt("study,f,df1,df,p,n1,n2\nA,3.2,2,57,<.05,20,20").ok());
 }
 
 TEST_CASE("exact p") {

@@ -78,9 +78,9 @@ class CellReader {
   void choose(Cell& cell, const Column& column);
 
   template <class What>
-  void error(const Cell& cell, const char* code, What what, std::string remedy) {
+  void error(const Cell& cell, const char* code, What what, const std::string& remedy) {
     if (problems_.enough_errors()) return problems_.count_error();
-    problems_.error(code, place_of(table_, cell), what(), std::move(remedy));
+    problems_.error(code, place_of(table_, cell), what(), remedy);
   }
 
   const Table& table_;

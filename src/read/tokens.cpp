@@ -248,18 +248,11 @@ class Tokenizer {
       token.text = "ns";
       return;
     }
-    while (true) {
-      if (is_letter(peek()) || is_digit(peek())) {
-        take(token);
-      } else if ((peek() == '-' || peek() == '\'') && is_letter(peek(1)) && !is_digit(token.text.back())) {
-        take(token);
-      } else if (peek() == '\'' && token.text.back() == 's') {
-        ++at_;  // Hedges'
-        return;
-      } else {
-        return;
-      }
-    }
+    const auto joins = [&] {  // `one-tailed`, `Cohen's`
+      return (peek() == '-' || peek() == '\'') && is_letter(peek(1)) && !is_digit(token.text.back());
+    };
+    while (is_letter(peek()) || is_digit(peek()) || joins()) take(token);
+    if (peek() == '\'' && token.text.back() == 's') ++at_;  // `Hedges'`
   }
 
   bool dotted_ns() {

@@ -84,18 +84,12 @@ bool mean_difference(Words& words) {
   const std::size_t start = words.at();
   const std::string name = words.word();
   const std::string next = words.word(1);
-  if ((name == "mean" || name == "m") && (next == "difference" || next == "diff")) {
-    words.skip(2);
-  } else if (name == "difference" && one_of(next, joins) && words.word(2) == "means") {
-    words.skip(3);
-  } else if ((name == "m1" || name == "mean1") && words.is_mark('-', 1) &&
-             (words.word(2) == "m2" || words.word(2) == "mean2")) {
-    words.skip(3);
-  } else if (one_of(name, names)) {
-    words.skip();
-  } else {
-    return false;
-  }
+  const bool two_words = (name == "mean" || name == "m") && (next == "difference" || next == "diff");
+  const bool of_means = name == "difference" && one_of(next, joins) && words.word(2) == "means";
+  const bool subtraction = (name == "m1" || name == "mean1") && words.is_mark('-', 1) &&
+                           (words.word(2) == "m2" || words.word(2) == "mean2");
+  if (!two_words && !of_means && !subtraction && !one_of(name, names)) return false;
+  words.skip(of_means || subtraction ? 3 : two_words ? 2 : 1);
   if (!words.relation_here()) return words.back_to(start);
   if (const auto number = words.value(start)) words.take("mean_diff", *number);
   words.last = "mean_diff";

@@ -45,6 +45,7 @@ struct Analysis {
   std::vector<std::string> left_out;  ///< labels named by `without`
   PoolResult result;
   std::vector<Diagnostic> cautions;  ///< of reading, rebuilding and pooling together
+  std::optional<RegionResult> region;  ///< when it was asked for
 };
 
 /// Reads, rebuilds, audits and pools the text of a file.

@@ -29,6 +29,9 @@ void write_json(const ReplicateAnalysis& analysis, const Sink& sink);
 /// The same as one string.
 [[nodiscard]] std::string render_json(const Check& check);
 
+/// A JSON string with its quotes; invalid UTF-8 becomes U+FFFD.
+[[nodiscard]] std::string quoted_json(std::string_view text);
+
 /// A kind of document that Steelyard writes or reads.
 struct JsonDocument {
   std::string_view name;   ///< of the command, or "studies" for input

@@ -28,6 +28,7 @@ struct TextStyle {
 [[nodiscard]] std::string render_text(const Check& check, const TextStyle& style = {});
 
 /// `weigh`, `stress` and `replicate` for people: the answer in a sentence, then the tables.
+[[nodiscard]] std::string render_text(const RegionResult& region, const TextStyle& style = {});
 [[nodiscard]] std::string render_text(const WeighAnalysis& analysis, const TextStyle& style = {});
 [[nodiscard]] std::string render_text(const StressAnalysis& analysis, const TextStyle& style = {});
 [[nodiscard]] std::string render_text(const ReplicateAnalysis& analysis, const TextStyle& style = {});

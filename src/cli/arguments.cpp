@@ -31,6 +31,8 @@ std::string unknown_option(const CommandInfo& command, const std::string& word) 
   const std::string name = word.substr(0, word.find('='));
   std::vector<std::string_view> names = {help_name};
   for (const OptionInfo* option : options_of(command.id)) names.push_back(option->name);
+  const std::vector<std::string> columns = column_options(command.id);
+  names.insert(names.end(), columns.begin(), columns.end());
   const std::string_view near = nearest_word(name, names);
   if (!near.empty()) {
     return fmt::format("steelyard {} has no option \"{}\". Did you mean \"{}\"?", command.name, name, near);
@@ -45,55 +47,61 @@ std::string unknown_option(const CommandInfo& command, const std::string& word) 
                      command.name, name, command.name);
 }
 
-std::string value_missing(const OptionInfo& option) {
-  return fmt::format("{} needs a value: {} {}.", option.name, option.name, option.value);
+std::string value_missing(const std::string& name, std::string_view value) {
+  return fmt::format("{} needs a value: {} {}.", name, name, value);
 }
 
-// What CLI11 knows of one option.
+// What CLI11 knows of one option; of a column's option, `info` is null.
 struct Bound {
   const OptionInfo* info;
+  std::string name;
   CLI::Option* option;
 };
 
 std::vector<Bound> bind(CLI::App& app, Command command) {
   std::vector<Bound> bound;
-  for (const OptionInfo* info : options_of(command)) {
-    CLI::Option* option = info->kind == ValueKind::none ? app.add_flag(std::string(info->name))
-                                                        : app.add_option(std::string(info->name));
-    if (info->kind != ValueKind::none) option->expected(1)->allow_extra_args(false);
+  const auto add = [&](const OptionInfo* info, const std::string& name, bool takes_value) {
+    CLI::Option* option = takes_value ? app.add_option(name) : app.add_flag(name);
+    if (takes_value) option->expected(1)->allow_extra_args(false);
     option->multi_option_policy(CLI::MultiOptionPolicy::TakeAll);
-    bound.push_back({info, option});
-  }
+    bound.push_back({info, name, option});
+  };
+  for (const OptionInfo* info : options_of(command))
+    add(info, std::string(info->name), info->kind != ValueKind::none);
+  for (const std::string& name : column_options(command)) add(nullptr, name, true);
   return bound;
 }
 
 // The option at the very end whose value is missing, or null. CLI11's own message would not say
 // what the value is.
-const OptionInfo* lacks_value(const std::vector<Bound>& bound, const std::vector<std::string>& words) {
+const Bound* lacks_value(const std::vector<Bound>& bound, const std::vector<std::string>& words) {
   for (std::size_t i = 0; i < words.size(); ++i) {
     if (words[i] == "--") return nullptr;
     const auto is_this = [&](const Bound& b) {
-      return b.info->name == words[i] && b.info->kind != ValueKind::none;
+      return b.name == words[i] && (b.info == nullptr || b.info->kind != ValueKind::none);
     };
     const auto found = std::find_if(bound.begin(), bound.end(), is_this);
     if (found == bound.end()) continue;
     ++i;  // the value, whatever it looks like
-    if (i == words.size()) return found->info;
+    if (i == words.size()) return &*found;
   }
   return nullptr;
 }
 
 void apply(const Bound& bound, Request& request) {
-  const OptionInfo& info = *bound.info;
   const auto values = bound.option->results();
-  if (values.size() > 1 && !info.repeatable) {
-    request.problems.push_back(fmt::format("{} is given {} times. Give it once.", info.name, values.size()));
+  if (values.size() > 1 && (bound.info == nullptr || !bound.info->repeatable)) {
+    request.problems.push_back(fmt::format("{} is given {} times. Give it once.", bound.name, values.size()));
     return;
   }
   for (const std::string& value : values) {
-    request.options.given.emplace_back(&info, value);
-    const std::string wrong = info.apply(request.options, value);
-    if (!wrong.empty()) request.problems.push_back(fmt::format("{}: {}", info.name, wrong));
+    if (bound.info == nullptr) {
+      request.options.cells.emplace_back(bound.name.substr(2), value);
+      continue;
+    }
+    request.options.given.emplace_back(bound.info, value);
+    const std::string wrong = bound.info->apply(request.options, value);
+    if (!wrong.empty()) request.problems.push_back(fmt::format("{}: {}", bound.name, wrong));
   }
 }
 
@@ -111,6 +119,13 @@ void take_file(const std::vector<std::string>& words, Request& request) {
                     "blanks in quotes.",
                     words[0], words[1]));
   }
+  if (!request.options.cells.empty()) {
+    if (!words.empty()) {
+      request.problems.push_back(fmt::format(
+          "A study is given by options, so the file \"{}\" is too much. Leave one of them away.", words[0]));
+    }
+    return;
+  }
   if (!words.empty()) {
     request.options.file = words[0];
   } else if (isatty(STDIN_FILENO) == 0) {
@@ -118,6 +133,28 @@ void take_file(const std::vector<std::string>& words, Request& request) {
   } else {
     request.problems.emplace_back("No file is given. Give the name of a file, or - for standard input.");
   }
+}
+
+// The first word of a command that has kinds names one.
+void take_kind(const CommandInfo& command, std::vector<std::string>& words, Request& request) {
+  if (command.kinds.empty()) return;
+  const auto kinds = words_of(command.kinds);
+  std::string list;
+  for (const std::string_view kind : kinds) list += fmt::format("{}{}", list.empty() ? "" : ", ", kind);
+  if (words.empty()) {
+    request.problems.push_back(
+        fmt::format("steelyard {} needs a kind before the file: {}.", command.name, list));
+    return;
+  }
+  if (std::find(kinds.begin(), kinds.end(), words.front()) == kinds.end()) {
+    const std::string_view near = nearest_word(words.front(), kinds);
+    request.problems.push_back(fmt::format(
+        "\"{}\" is not a kind that steelyard {} knows. {}", words.front(), command.name,
+        near.empty() ? fmt::format("It knows {}.", list) : fmt::format("Did you mean \"{}\"?", near)));
+    return;
+  }
+  request.options.kind = words.front();
+  words.erase(words.begin());
 }
 
 // Words that CLI11 could not place: unknown options, and files.
@@ -134,6 +171,7 @@ void sort_rest(const CommandInfo& command, const std::vector<std::string>& rest,
     }
   }
   // After an unknown option, a word may be its value: the one problem is enough.
+  if (request.problems.empty()) take_kind(command, files, request);
   if (request.problems.empty()) take_file(files, request);
 }
 
@@ -142,8 +180,8 @@ void read_options(const CommandInfo& command, std::vector<std::string> words, Re
   app.set_help_flag();
   app.allow_extras();
   const std::vector<Bound> bound = bind(app, command.id);
-  if (const OptionInfo* option = lacks_value(bound, words)) {
-    request.problems.push_back(value_missing(*option));
+  if (const Bound* one = lacks_value(bound, words)) {
+    request.problems.push_back(value_missing(one->name, one->info == nullptr ? "VALUE" : one->info->value));
     return;
   }
   std::reverse(words.begin(), words.end());  // CLI11 takes them from the back

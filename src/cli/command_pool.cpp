@@ -14,7 +14,7 @@ namespace steelyard::cli {
 namespace {
 
 // The rows and options of this run: from a file of studies, or from the result of an earlier run.
-Outcome<RecordedRun> gather(const std::string& text, Options options) {
+Outcome<RecordedRun> run_of(const std::string& text, Options options) {
   if (!options.from_result) {
     auto table = read_table(text, options.file);
     if (!table.ok()) return {std::nullopt, std::move(table.diagnostics)};
@@ -36,11 +36,30 @@ Outcome<RecordedRun> gather(const std::string& text, Options options) {
 Outcome<Analysis> analyse(const Options& options) {
   auto run = [&]() -> Outcome<RecordedRun> {
     const auto text = input_text(options);
-    return text ? gather(*text, options) : Outcome<RecordedRun>{};
+    return text ? run_of(*text, options) : Outcome<RecordedRun>{};
   }();  // the text itself is not needed any longer
   if (!run.ok()) return {std::nullopt, std::move(run.diagnostics)};
   const Progress progress("Pooling the studies");
   return analyse_table(std::move(run.value->input), run.value->options, std::move(run.diagnostics));
+}
+
+// The text, and what was asked about a region.
+std::string text_of(const Analysis& analysis, const Options& options) {
+  const TextStyle style = text_style(options);
+  std::string text = render_text(analysis, style);
+  if (analysis.region) text += '\n' + render_text(*analysis.region, style);
+  return text;
+}
+
+// The question about a region, answered beside the analysis.
+Outcome<Analysis> with_region(Outcome<Analysis> outcome, const Options& options) {
+  if (!outcome.ok() || !options.region) return outcome;
+  Analysis& analysis = *outcome.value;
+  auto region = weigh_region(analysis.result, analysis.options.priors, analysis.studies,
+                             {*options.region, options.threshold});
+  if (!region.ok()) return {std::nullopt, std::move(region.diagnostics)};
+  analysis.region = std::move(*region.value);
+  return outcome;
 }
 
 }  // namespace
@@ -50,7 +69,7 @@ Exit run_pool(const Options& options) {
   Outputs outputs(names, options.file);
   if (!outputs.ok()) return Exit::file_trouble;
 
-  const Outcome<Analysis> outcome = analyse(options);
+  const Outcome<Analysis> outcome = with_region(analyse(options), options);
   if (!outcome.ok()) {
     say(outcome.diagnostics);
     return outcome.diagnostics.empty() ? Exit::file_trouble : Exit::unusable_data;
@@ -60,16 +79,9 @@ Exit run_pool(const Options& options) {
   if (outputs.at(1).wanted()) {
     write_json(analysis, [&](std::string_view bytes) { outputs.at(1).write(bytes); });
   }
-  if (!outputs.commit()) return Exit::file_trouble;
-  if (!outputs.takes_standard_output()) {
-    const Exit printed = print(render_text(analysis, text_style(options)));
-    if (printed != Exit::done) return printed;
-  }
-  if (!analysis.result.accurate) {
-    say_error("The promised accuracy was not reached; the results say by how much it may be missed.");
-    return Exit::not_satisfied;
-  }
-  return fails_on(options, analysis.findings) ? Exit::not_satisfied : Exit::done;
+  return finish(
+      outputs, options, [&] { return text_of(analysis, options); }, analysis.result.accurate,
+      analysis.findings);
 }
 
 }  // namespace steelyard::cli

@@ -10,7 +10,7 @@ namespace steelyard::cli {
 
 struct Options;
 
-enum class Command : unsigned { pool = 1, check = 2 };
+enum class Command : unsigned { pool = 1, check = 2, weigh = 4, stress = 8, replicate = 16, draw = 32 };
 
 /// Several commands.
 class CommandSet {
@@ -38,6 +38,7 @@ struct CommandInfo {
   std::string_view summary;      ///< one line without full stop
   std::string_view description;  ///< a paragraph
   std::span<const Example> examples;
+  std::string_view kinds;  ///< words separated by '|', of which the first argument is one; "" when none
   Exit (*run)(const Options& options);
 };
 
@@ -48,5 +49,9 @@ struct CommandInfo {
 
 Exit run_pool(const Options& options);
 Exit run_check(const Options& options);
+Exit run_weigh(const Options& options);
+Exit run_stress(const Options& options);
+Exit run_replicate(const Options& options);
+Exit run_draw(const Options& options);
 
 }  // namespace steelyard::cli

@@ -30,6 +30,8 @@ std::string command_names() {
 std::string option_names(const CommandInfo& command) {
   std::vector<std::string_view> names;
   for (const OptionInfo* option : options_of(command.id)) names.push_back(option->name);
+  const std::vector<std::string> columns = column_options(command.id);
+  names.insert(names.end(), columns.begin(), columns.end());
   return joined(names) + " --help";
 }
 
@@ -150,7 +152,10 @@ std::string zsh_completion() {
                       zsh_value(*option));
       text += fmt::format("            {} \\\n", in_single_quotes(specification, "'\\''"));
     }
-    text += "            '--help[help]' \\\n            '1:file:_files' ;;\n";
+    text += "            '--help[help]' \\\n";
+    text += command.kinds.empty() ? "            '1:file:_files' ;;\n"
+                                  : fmt::format("            '1:kind:({})' '2:file:_files' ;;\n",
+                                                joined(words_of(command.kinds)));
   }
   return text + "      esac ;;\n  esac\n}\n_steelyard \"$@\"\n";
 }
@@ -170,6 +175,7 @@ std::string fish_completion() {
       text += fmt::format("{} -l {}{} -d {}\n", seen, option->name.substr(2), fish_value(*option),
                           in_single_quotes(first_sentence(option->meaning), "\\'"));
     }
+    if (!command.kinds.empty()) text += fmt::format("{} -a '{}'\n", seen, joined(words_of(command.kinds)));
     text += fmt::format("{} -l help -d 'help'\n", seen);
   }
   return text;

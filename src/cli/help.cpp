@@ -46,6 +46,20 @@ std::string exit_help(std::size_t width) {
 std::string_view about_text() { return about; }
 std::string_view file_text() { return file_meaning; }
 
+std::string_view column_text() {
+  return "Any column of docs/formats.md (--t, --n1, --mean1, ...): one study without a file.";
+}
+
+std::string kind_text(const CommandInfo& command) {
+  std::string text = "One of ";
+  const auto kinds = words_of(command.kinds);
+  for (std::size_t i = 0; i < kinds.size(); ++i) {
+    if (i > 0) text += i + 1 == kinds.size() ? " or " : ", ";
+    text += kinds[i];
+  }
+  return text + '.';
+}
+
 std::string option_meaning(const OptionInfo& option, bool with_default) {
   std::string meaning(option.meaning);
   const auto words = words_of(option.choices);
@@ -98,10 +112,13 @@ std::string general_help(std::size_t width) {
 
 std::string command_help(const CommandInfo& command, std::size_t width) {
   std::string text = wrapped(fmt::format("steelyard {}: {}", command.name, command.summary), 0, width) +
-                     fmt::format("\nUsage: steelyard {} [FILE] [OPTIONS]\n\n", command.name);
+                     fmt::format("\nUsage: steelyard {} {}[FILE] [OPTIONS]\n\n", command.name,
+                                 command.kinds.empty() ? "" : "KIND ");
   text += wrapped(command.description, 0, width);
+  if (!command.kinds.empty()) text += "\n  KIND\n" + wrapped(kind_text(command), 6, width);
   text += "\n  FILE\n" + wrapped(file_meaning, 6, width) + "\nOptions:\n";
   for (const OptionInfo* option : options_of(command.id)) text += option_help(*option, width);
+  if (!column_options(command.id).empty()) text += "  --COLUMN VALUE\n" + wrapped(column_text(), 6, width);
   text += "  --help\n      This text.\n\nExamples:\n";
   for (const Example& example : command.examples) {
     text += fmt::format("  {}\n", example.line);

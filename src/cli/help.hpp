@@ -27,6 +27,11 @@ struct ExitMeaning {
 /// What FILE stands for.
 [[nodiscard]] std::string_view file_text();
 
+/// What --COLUMN stands for.
+[[nodiscard]] std::string_view column_text();
+/// What KIND stands for.
+[[nodiscard]] std::string kind_text(const CommandInfo& command);
+
 struct OptionInfo;
 /// Meaning, choices and (if wanted) default of an option, in sentences.
 [[nodiscard]] std::string option_meaning(const OptionInfo& option, bool with_default = true);

@@ -90,10 +90,15 @@ std::string manual() {
 
 std::string manual(const CommandInfo& command) {
   std::string text = title(fmt::format("steelyard-{}", command.name), command.summary);
-  text += fmt::format(".SH SYNOPSIS\n.B steelyard {}\n.RI [ FILE ]\n.RI [ OPTIONS ]\n", command.name);
-  text += fmt::format(".SH DESCRIPTION\n{}\n.TP\n.I FILE\n{}\n.SH OPTIONS\n", roff(command.description),
-                      roff(file_text()));
+  text += fmt::format(".SH SYNOPSIS\n.B steelyard {}\n{}.RI [ FILE ]\n.RI [ OPTIONS ]\n", command.name,
+                      command.kinds.empty() ? "" : ".I KIND\n");
+  text += fmt::format(".SH DESCRIPTION\n{}\n", roff(command.description));
+  if (!command.kinds.empty()) text += fmt::format(".TP\n.I KIND\n{}\n", roff(kind_text(command)));
+  text += fmt::format(".TP\n.I FILE\n{}\n.SH OPTIONS\n", roff(file_text()));
   for (const OptionInfo* option : options_of(command.id)) text += option_entry(*option);
+  if (!column_options(command.id).empty()) {
+    text += fmt::format(".TP\n.B \\-\\-\\fICOLUMN\\fR \\fIVALUE\\fR\n{}\n", roff(column_text()));
+  }
   text += ".TP\n.B \\-\\-help\nHelp for this command.\n.SH EXAMPLES\n" + examples(command);
   return text + exit_status() + other_pages(&command);
 }
@@ -111,6 +116,8 @@ std::string markdown_reference() {
                           option->value, meaning,
                           option->fallback.empty() ? "" : fmt::format("{}", option->fallback));
     }
+    if (!column_options(command.id).empty())
+      text += fmt::format("| `--COLUMN VALUE` | {} | |\n", column_text());
     text += "\nExamples:\n\n```\n";
     for (const Example& example : command.examples)
       text += fmt::format("# {}\n{}\n", example.purpose, example.line);

@@ -1,6 +1,7 @@
 #include "options.hpp"
 
 #include <fmt/format.h>
+#include <algorithm>
 #include <array>
 #include <charconv>
 #include <cmath>
@@ -11,8 +12,12 @@ namespace steelyard::cli {
 
 namespace {
 
-constexpr CommandSet pooling = Command::pool;
-constexpr CommandSet all_commands = Command::pool | Command::check;
+constexpr CommandSet pooling =
+    Command::pool | Command::stress | Command::replicate | CommandSet(Command::draw);
+constexpr CommandSet with_effect_prior = pooling | CommandSet(Command::weigh);
+constexpr CommandSet all_commands = with_effect_prior | CommandSet(Command::check);
+constexpr CommandSet with_numbers = Command::pool | Command::check | CommandSet(Command::weigh) |
+                                    CommandSet(Command::stress) | CommandSet(Command::replicate);
 
 std::optional<double> read_number(std::string_view text) {
   double value = 0.0;
@@ -180,11 +185,63 @@ std::string put_from(Options& o, std::string_view value) {
   return "";
 }
 
+std::string put_finite(std::optional<double>& target, std::string_view value, bool positive) {
+  const auto number = read_number(value);
+  if (!number || (positive && *number <= 0.0)) {
+    return fmt::format("\"{}\" is not a {}number. Give one like 0.5.", value, positive ? "positive " : "");
+  }
+  target = number;
+  return "";
+}
+
+std::string put_region(Options& o, std::string_view value) {
+  const std::size_t colon = value.find(':');
+  const auto low = read_number(value.substr(0, colon));
+  const auto high = colon == std::string_view::npos ? std::nullopt : read_number(value.substr(colon + 1));
+  if (!low || !high || !(*low < *high)) {
+    return fmt::format("\"{}\" is not two numbers, the lower first. Give them like -0.1:0.1.", value);
+  }
+  o.region = Interval{*low, *high};
+  return "";
+}
+
+std::string put_by(Options& o, std::string_view value) {
+  if (value.empty()) return "the name of a column can't be empty.";
+  o.by = value;
+  return "";
+}
+
+std::string put_verdict(Options& o, std::string_view value) {
+  const auto number = read_number(value);
+  if (!number || *number <= 1.0)
+    return fmt::format("\"{}\" is not a number above 1. Give one like 3 or 10.", value);
+  o.verdict = *number;
+  return "";
+}
+
+std::string put_threads(Options& o, std::string_view value) {
+  unsigned count = 0;
+  const auto [end, error] = std::from_chars(value.data(), value.data() + value.size(), count);
+  if (error != std::errc() || end != value.data() + value.size() || count < 1 || count > 1024) {
+    return fmt::format("\"{}\" is not a whole number from 1 to 1024.", value);
+  }
+  o.threads = count;
+  return "";
+}
+
+constexpr std::string_view sizes = "one-column|two-columns";
+
+std::string put_size(Options& o, std::string_view value) {
+  if (value != "one-column" && value != "two-columns") return one_of(value, sizes);
+  o.one_column = value == "one-column";
+  return "";
+}
+
 constexpr std::array table = {
     OptionInfo{"--effect-prior", ValueKind::text, "PRIOR", "",
                "Prior of the mean effect, in SD units: cauchy(location, scale), normal(mean, sd), "
                "student-t(location, scale, df), uniform(low, high), or the name of a published prior.",
-               "cauchy(0, 1/sqrt(2))", false, pooling, put_effect_prior},
+               "cauchy(0, 1/sqrt(2))", false, with_effect_prior, put_effect_prior},
     OptionInfo{
         "--spread-prior", ValueKind::text, "PRIOR", "",
         "Prior of the spread, the SD of effects among studies: inverse-gamma(shape, scale), "
@@ -195,14 +252,14 @@ constexpr std::array table = {
     OptionInfo{
         "--direction", ValueKind::choice, "SIDE", directions,
         "Mean effects that the prior allows. It restricts the mean effect, not the effect of each study.",
-        "either", false, pooling, put_direction},
+        "either", false, with_effect_prior, put_direction},
     OptionInfo{"--model-priors", ValueKind::text, "A,B,C,D", "",
                "Weights of the four models before the data: no effect; the same effect everywhere; effects "
                "that vary "
                "around zero; effects that vary around a mean effect. They are divided by their sum.",
                "1,1,1,1", false, pooling, put_model_priors},
     OptionInfo{"--level", ValueKind::number, "PROBABILITY", "", "Probability inside the credible intervals.",
-               "0.95", false, pooling,
+               "0.95", false, with_effect_prior,
                [](Options& o, std::string_view v) { return put_fraction(o.analysis.pool.level, v, "0.9"); }},
     OptionInfo{
         "--alpha", ValueKind::number, "PROBABILITY", "",
@@ -215,22 +272,53 @@ constexpr std::array table = {
         "--fail-on", ValueKind::choice, "GRADE", grades,
         "Exit status 4 when the audit finds something of this grade or worse. The result is written all the "
         "same.",
-        "", false, all_commands, put_fail_on},
-    OptionInfo{"--svg", ValueKind::file, "FILE", "", "Writes the forest as an SVG figure.", "", false,
-               pooling, [](Options& o, std::string_view v) { return put_file(o.svg, v); }},
+        "", false, with_numbers, put_fail_on},
+    OptionInfo{"--region", ValueKind::text, "LOW:HIGH", "",
+               "Asks about effects that are practically negligible: evidence for an effect inside the "
+               "region, and its "
+               "probability.",
+               "", false, Command::pool | Command::weigh, put_region},
+    OptionInfo{"--threshold", ValueKind::number, "EFFECT", "",
+               "Asks for the probability that the effect in a new study exceeds this.", "", false,
+               Command::pool | Command::weigh,
+               [](Options& o, std::string_view v) { return put_finite(o.threshold, v, false); }},
+    OptionInfo{"--expected", ValueKind::number, "EFFECT", "",
+               "The effect that a sceptic doubts and an enthusiast expects.", "0.5", false, Command::weigh,
+               [](Options& o, std::string_view v) { return put_finite(o.expected, v, true); }},
+    OptionInfo{
+        "--by", ValueKind::text, "COLUMN", "",
+        "A column of labels: each group alone and left out, and evidence for a difference among groups.", "",
+        false, Command::stress, put_by},
+    OptionInfo{"--verdict-at", ValueKind::number, "RATIO", "",
+               "A Bayes factor of at least this, either way, counts as a verdict; less is undecided.", "3",
+               false, Command::stress, put_verdict},
+    OptionInfo{"--selection-alpha", ValueKind::number, "PROBABILITY", "",
+               "Two-sided level at which originals are read as selected for significance.", "0.05", false,
+               Command::replicate,
+               [](Options& o, std::string_view v) { return put_fraction(o.selection_alpha, v, "0.05"); }},
+    OptionInfo{"--threads", ValueKind::number, "COUNT", "",
+               "Threads to compute with. The result is the same for any number.", "1", false,
+               Command::stress | Command::draw, put_threads},
+    OptionInfo{"--size", ValueKind::choice, "SIZE", sizes,
+               "Width of the figure: one column of a journal (85 mm) or two "
+               "(180 mm).",
+               "two-columns", false, Command::draw, put_size},
+    OptionInfo{"--svg", ValueKind::file, "FILE", "", "Writes the figure (of pool: the forest) as SVG.", "",
+               false, Command::pool | Command::draw,
+               [](Options& o, std::string_view v) { return put_file(o.svg, v); }},
     OptionInfo{"--json", ValueKind::file, "FILE", "",
                "Writes all results as JSON. With - it goes to standard output, and nothing else does.", "",
-               false, all_commands, [](Options& o, std::string_view v) { return put_file(o.json, v); }},
+               false, with_numbers, [](Options& o, std::string_view v) { return put_file(o.json, v); }},
     OptionInfo{"--from", ValueKind::file, "RESULT", "",
                "Repeats the run that wrote this JSON result: its rows, priors and options. Other options "
                "given beside "
                "it replace the recorded ones.",
                "", false, Command::pool, put_from},
     OptionInfo{"--width", ValueKind::number, "COLUMNS", "", "Width of the text.",
-               "that of the terminal, else 80", false, all_commands, put_width},
+               "that of the terminal, else 80", false, with_numbers, put_width},
     OptionInfo{"--colour", ValueKind::choice, "WHEN", whens,
                "Colour in the text. auto: on a terminal, and not when NO_COLOR is set.", "auto", false,
-               all_commands, [](Options& o, std::string_view v) { return put_when(o.colour, v); }},
+               with_numbers, [](Options& o, std::string_view v) { return put_when(o.colour, v); }},
     OptionInfo{"--glyphs", ValueKind::choice, "SET", glyphs,
                "Characters of the text. auto: unicode when the locale is UTF-8.", "auto", false, all_commands,
                put_glyphs},
@@ -258,6 +346,19 @@ std::vector<const OptionInfo*> options_of(Command command) {
   return found;
 }
 
+std::vector<std::string> column_options(Command command) {
+  std::vector<std::string> names;
+  if (command != Command::weigh) return names;
+  for (const Column& column : columns()) {
+    std::string name = fmt::format("--{}", column.name);
+    const auto same = [&](const OptionInfo& option) {
+      return option.name == name && option.commands.has(command);
+    };
+    if (std::none_of(table.begin(), table.end(), same)) names.push_back(std::move(name));
+  }
+  return names;
+}
+
 std::vector<std::string> settle(Options& o) {
   std::vector<std::string> problems;
   EffectPrior& effect = o.analysis.priors.effect;
@@ -269,6 +370,7 @@ std::vector<std::string> settle(Options& o) {
   if (auto problem = problem_with(o.analysis.priors.spread)) {
     problems.push_back("--spread-prior: " + in_one_line({*problem}));
   }
+  if (o.threshold && !o.region) o.region = Interval{-0.1, 0.1};
   if (o.svg == "-" && o.json == "-") {
     problems.push_back(
         "--svg - and --json - can't both go to standard output. Give one of them the name of a file.");

@@ -31,6 +31,17 @@ struct Options {
   bool from_result = false;  ///< `file` is a result to repeat
   /// What was given, in order, for a run that starts from recorded options.
   std::vector<std::pair<const OptionInfo*, std::string>> given;
+  std::string kind;  ///< of figure
+  bool one_column = false;
+  /// Cells given as options, by column: one row without a file.
+  std::vector<std::pair<std::string, std::string>> cells;
+  std::optional<Interval> region;
+  std::optional<double> threshold;
+  std::optional<double> expected;
+  std::string by;
+  double verdict = 3.0;
+  double selection_alpha = 0.05;
+  unsigned threads = 1;
   std::optional<std::size_t> width;
   When colour = When::automatic;
   When utf8 = When::automatic;
@@ -57,6 +68,10 @@ struct OptionInfo {
 
 /// Those that a command takes.
 [[nodiscard]] std::vector<const OptionInfo*> options_of(Command command);
+
+/// The options that carry the names of columns ("--t", "--n1", ...), for commands that take a study
+/// straight from the command line.
+[[nodiscard]] std::vector<std::string> column_options(Command command);
 
 /// What only all options together can tell: a prior without mass in the direction asked, two outputs
 /// on standard output, ... One sentence each.

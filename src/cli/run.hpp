@@ -36,6 +36,18 @@ class Outputs {
 /// Text of the file that the options name; says why not.
 [[nodiscard]] std::optional<std::string> input_text(const Options& options);
 
+/// The rows that a command works on, from the file or from options that name columns; or how the run
+/// ends without them, after the messages.
+struct RowsOrExit {
+  std::optional<Gathered> rows;
+  Exit exit = Exit::done;
+};
+[[nodiscard]] RowsOrExit gathered_rows(const Options& options);
+
+/// The end of a run: files in place, text printed, and what the exit status has to say.
+[[nodiscard]] Exit finish(Outputs& outputs, const Options& options, const std::function<std::string()>& text,
+                          bool accurate, std::span<const Finding> findings);
+
 /// Prints results; Exit::file_trouble, with a message, when that can't be.
 [[nodiscard]] Exit print(std::string_view text);
 

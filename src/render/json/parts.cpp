@@ -218,4 +218,43 @@ Part<AnalysisOptions> analysis_options_part() {
                                [](O o) -> const std::vector<std::string>& { return o.without; })}});
 }
 
+namespace {
+
+Part<RegionMass> mass_part() {
+  return object<RegionMass>(
+      "region_mass",
+      {{"inside", "probability in the region, given an effect", number<RegionMass>(&RegionMass::inside)},
+       {"inside_all_models", "the same with the models without an effect",
+        number<RegionMass>(&RegionMass::inside_all_models)}});
+}
+
+}  // namespace
+
+Part<RegionResult> region_part() {
+  return object<RegionResult>(
+      "region",
+      {{"low", "lower end of the region",
+        number<RegionResult>([](const RegionResult& r) { return r.asked.region.low; })},
+       {"high", "upper end", number<RegionResult>([](const RegionResult& r) { return r.asked.region.high; })},
+       {"negligible", "evidence for an effect inside against outside",
+        inside<RegionResult>(bayes_factor_part(), &RegionResult::negligible)},
+       {"negligible_limit", "where the evidence is only bounded: its log is beyond this",
+        number<RegionResult>(&RegionResult::negligible_limit)},
+       {"reason", "why a number is null",
+        text_or_null<RegionResult>([](const RegionResult& r) { return std::string_view(r.reason); })},
+       {"prior_inside", "prior probability of the region", number<RegionResult>(&RegionResult::prior_inside)},
+       {"mean_effect", "of the mean effect", inside<RegionResult>(mass_part(), &RegionResult::mean_effect)},
+       {"new_study", "of the effect in a new study",
+        inside<RegionResult>(mass_part(), &RegionResult::new_study)},
+       {"positive", "probability of a positive mean effect", number<RegionResult>(&RegionResult::positive)},
+       {"log_sign_odds", "log odds of a positive against a negative effect",
+        number<RegionResult>(&RegionResult::log_sign_odds)},
+       {"threshold", "the threshold asked for",
+        number<RegionResult>([](const RegionResult& r) { return r.asked.threshold; })},
+       {"above_threshold", "probability that the effect in a new study exceeds it",
+        number<RegionResult>(&RegionResult::above_threshold)},
+       {"above_threshold_all_models", "the same with the models without an effect",
+        number<RegionResult>(&RegionResult::above_threshold_all_models)}});
+}
+
 }  // namespace steelyard::json

@@ -155,6 +155,9 @@ const Part<View>& pool_part() {
                of_analysis(evidence_part(), [](A a) -> const PoolResult& { return a.result; })},
               {"pooled", "what is known after the data",
                of_analysis(pooled_part(), [](A a) -> const PoolResult& { return a.result; })},
+              {"region", "what was asked about a region",
+               inside<View>(region_part(),
+                            [](V v) -> const std::optional<RegionResult>& { return v.analysis->region; })},
               {"cautions", "what a reader must know beside the numbers",
                array<View>(diagnostic_part(),
                            [](V v) -> const std::vector<Diagnostic>& { return v.analysis->cautions; })}});

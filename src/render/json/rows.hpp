@@ -9,6 +9,7 @@
 namespace steelyard::json {
 
 [[nodiscard]] Part<AnalysisOptions> analysis_options_part();
+[[nodiscard]] Part<RegionResult> region_part();
 
 /// An array of texts.
 template <class T, class Get>

@@ -16,7 +16,6 @@ struct RowView {
 };
 
 using W = const Weighing&;
-using R = const RegionResult&;
 
 Part<Weighing> factor(std::optional<LogBayesFactor> Weighing::*member) {
   return inside<Weighing>(bayes_factor_part(),
@@ -29,39 +28,6 @@ Part<Weighing> translated(std::optional<Translated> Weighing::*member) {
                      {"lower", "lower end of the interval", number<Translated>(&Translated::lower)},
                      {"upper", "upper end", number<Translated>(&Translated::upper)}});
   return inside<Weighing>(part, [member](W w) -> const std::optional<Translated>& { return w.*member; });
-}
-
-Part<RegionMass> mass_part() {
-  return object<RegionMass>(
-      "region_mass",
-      {{"inside", "probability in the region, given an effect", number<RegionMass>(&RegionMass::inside)},
-       {"inside_all_models", "the same with the models without an effect",
-        number<RegionMass>(&RegionMass::inside_all_models)}});
-}
-
-Part<RegionResult> region_part() {
-  return object<RegionResult>(
-      "region",
-      {{"low", "lower end of the region", number<RegionResult>([](R r) { return r.asked.region.low; })},
-       {"high", "upper end", number<RegionResult>([](R r) { return r.asked.region.high; })},
-       {"negligible", "evidence for an effect inside against outside",
-        inside<RegionResult>(bayes_factor_part(), &RegionResult::negligible)},
-       {"negligible_limit", "where the evidence is only bounded: its log is beyond this",
-        number<RegionResult>(&RegionResult::negligible_limit)},
-       {"reason", "why a number is null",
-        text_or_null<RegionResult>([](R r) { return std::string_view(r.reason); })},
-       {"prior_inside", "prior probability of the region", number<RegionResult>(&RegionResult::prior_inside)},
-       {"mean_effect", "of the mean effect", inside<RegionResult>(mass_part(), &RegionResult::mean_effect)},
-       {"new_study", "of the effect in a new study",
-        inside<RegionResult>(mass_part(), &RegionResult::new_study)},
-       {"positive", "probability of a positive mean effect", number<RegionResult>(&RegionResult::positive)},
-       {"log_sign_odds", "log odds of a positive against a negative effect",
-        number<RegionResult>(&RegionResult::log_sign_odds)},
-       {"threshold", "the threshold asked for", number<RegionResult>([](R r) { return r.asked.threshold; })},
-       {"above_threshold", "probability that the effect in a new study exceeds it",
-        number<RegionResult>(&RegionResult::above_threshold)},
-       {"above_threshold_all_models", "the same with the models without an effect",
-        number<RegionResult>(&RegionResult::above_threshold_all_models)}});
 }
 
 Part<Weighing> bound_part() {

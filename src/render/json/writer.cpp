@@ -167,3 +167,9 @@ void Writer::flush_when_full() {
 }
 
 }  // namespace steelyard::json
+
+namespace steelyard {
+
+std::string quoted_json(std::string_view text) { return json::quoted(text); }
+
+}  // namespace steelyard

@@ -92,6 +92,10 @@ constexpr std::size_t most_described = 20;
 
 }  // namespace
 
+std::string render_text(const RegionResult& region, const TextStyle& style) {
+  return paragraph(region_sentence(region), style);
+}
+
 std::string render_text(const WeighAnalysis& a, const TextStyle& style) {
   std::string out = paragraph(weigh_verdict(a), style) + "\n" + rows_table(a, style) + "\n";
   out += heading("One by one", style);

@@ -8,7 +8,9 @@
 #include <limits>
 #include <vector>
 
+#include "numeric/chebyshev.hpp"
 #include "numeric/kernel.hpp"
+#include "numeric/multiversion.hpp"
 #include "numeric/vector_math.hpp"
 #include "steelyard/numeric.hpp"
 
@@ -20,6 +22,18 @@ constexpr double infinity = std::numeric_limits<double>::infinity();
 
 /// What is dropped below the largest value of the integrand, in nats.
 constexpr double negligible = 42.0;
+
+/// t = scale·sinh w and log dt/dw.
+STEELYARD_MULTIVERSION
+void sinh_block(const double* __restrict w, double scale, double* __restrict t, double* __restrict log_slope,
+                std::size_t count) {
+  for (std::size_t j = 0; j < count; ++j) {
+    const double up = vector_exp(w[j]);
+    const double down = 1.0 / up;
+    t[j] = 0.5 * scale * (up - down);
+    log_slope[j] = vector_log(0.5 * scale * (up + down));
+  }
+}
 
 /// The integrand in a coordinate w that suits the band. Usually t = √df·sinh w, which turns the algebraic
 /// tails in t into exponential ones. Narrow bands: t = low + w, because the difference of two hyperbolic
@@ -44,12 +58,7 @@ class Integrand {
       return;
     }
     std::array<double, N> log_slope;
-    for (std::size_t j = 0; j < N; ++j) {
-      const double up = vector_exp(w[j]);
-      const double down = 1.0 / up;
-      t[j] = 0.5 * root_df_ * (up - down);
-      log_slope[j] = vector_log(0.5 * root_df_ * (up + down));
-    }
+    sinh_block(w.data(), root_df_, t.data(), log_slope.data(), N);
     kernel_.over_t(t, ncp_, out);
     for (std::size_t j = 0; j < N; ++j) out[j] += log_slope[j];
   }
@@ -125,17 +134,18 @@ double integrate_panel(const Integrand& g, double from, double to, double top) {
   const auto& weight = Rule::weights();
   const double half = 0.5 * (to - from);
   const double middle = from + half;
-  std::array<double, 25> w;
-  std::array<double, 25> value;
-  w[0] = middle;
+  // 25 points filled up to whole vectors.
+  std::array<double, 32> w;
+  std::array<double, 32> value;
+  std::fill(w.begin(), w.end(), middle);
   for (std::size_t j = 1; j < x.size(); ++j) {
     w[2 * j - 1] = middle + half * x[j];
     w[2 * j] = middle - half * x[j];
   }
   g.log_values(w, value);
-  double sum = weight[0] * vector_exp(value[0] - top);
-  for (std::size_t j = 1; j < x.size(); ++j)
-    sum += weight[j] * (vector_exp(value[2 * j - 1] - top) + vector_exp(value[2 * j] - top));
+  exp_shifted(value.data(), top, value.size());
+  double sum = weight[0] * value[0];
+  for (std::size_t j = 1; j < x.size(); ++j) sum += weight[j] * (value[2 * j - 1] + value[2 * j]);
   return half * sum;
 }
 

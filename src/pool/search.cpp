@@ -155,7 +155,9 @@ class Search {
       if (!last) return trim(outer, side);
       if (points_[outer].x == limit) return limit;
       const double distance = std::max(std::fabs(points_[outer].x - points_[best_].x), width_);
-      const double next = points_[best_].x + side * 2.0 * distance;
+      // Algebraic tails go on for many powers of ten.
+      const double factor = distance > 100.0 * width_ ? 10.0 : 2.0;
+      const double next = points_[best_].x + side * factor * distance;
       look({side < 0 ? std::max(limit, next) : std::min(limit, next)});
     }
     return points_[outermost(side)].x;

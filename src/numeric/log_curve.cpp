@@ -29,7 +29,6 @@ double allowed_error(const LogCurve::Need& need, const ChebyshevArray& x, const 
 LogCurve::LogCurve(const BlockFunction& function, std::span<const double> breaks, const Need& need) {
   std::vector<std::pair<double, double>> waiting;  // the leftmost is at the back
   for (std::size_t i = breaks.size() - 1; i > 0; --i) waiting.emplace_back(breaks[i - 1], breaks[i]);
-  const double shortest = 1e-11 * (std::fabs(breaks.front()) + std::fabs(breaks.back()));
   while (!waiting.empty()) {
     const auto [low, high] = waiting.back();
     waiting.pop_back();
@@ -43,7 +42,8 @@ LogCurve::LogCurve(const BlockFunction& function, std::span<const double> breaks
     Panel panel{low, high, chebyshev_fit(values), 0.0, evaluations_ / N - 1};
     panel.error = chebyshev_tail(panel.coefficients);
     const bool good = panel.error <= allowed_error(need, x, values);
-    if (!good && high - low > shortest && panels_.size() + waiting.size() < need.most_panels) {
+    if (!good && high - low > 1e-12 * (std::fabs(low) + std::fabs(high)) &&
+        panels_.size() + waiting.size() < need.most_panels) {
       waiting.emplace_back(middle, high);
       waiting.emplace_back(low, middle);
     } else {

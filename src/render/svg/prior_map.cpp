@@ -47,32 +47,58 @@ bool crossed(const Plot& plot, const figure::PriorMap& map, const Box& box) {
   return false;
 }
 
-void cells(Plot& plot, const figure::PriorMap& map) {
-  const std::size_t rows = map.scale_edges.size() - 1, columns = map.width_edges.size() - 1;
-  double widest = 0;
-  for (const auto& value : map.decibans)
-    if (value) widest = std::max(widest, text_width(cell_text(*value), small));
-  const double cell_width = (plot.right() - plot.left()) / static_cast<double>(columns);
-  const double cell_height = (plot.bottom() - plot.top()) / static_cast<double>(rows);
-  // With many cells every second or third one carries its number.
-  const auto each_column = static_cast<std::size_t>(std::max(1.0, std::ceil((widest + 4) / cell_width)));
-  const auto each_row = static_cast<std::size_t>(std::max(1.0, std::ceil(1.3 * small / cell_height)));
-  for (std::size_t i = 0; i < columns; ++i) {
-    for (std::size_t j = 0; j < rows; ++j) {
-      const auto& value = map.decibans[i * rows + j];
-      const double x1 = plot.x.px(map.width_edges[i]), x2 = plot.x.px(map.width_edges[i + 1]);
-      const double y1 = plot.y.px(map.scale_edges[j + 1]), y2 = plot.y.px(map.scale_edges[j]);
-      if (value) plot.page.rect({x1, y1, x2 - x1 + 0.3, y2 - y1 + 0.3}, cell_role(*value));
-      if (i % each_column != each_column / 2 || j % each_row != each_row / 2) continue;
-      if (value && (x2 - x1) * static_cast<double>(each_column) < widest + 2) continue;
-      const double middle = (x1 + x2) / 2;
-      if (middle - widest / 2 < plot.left() || middle + widest / 2 > plot.right()) continue;
-      const double width = value ? text_width(cell_text(*value), small) : 5;
-      if (crossed(plot, map, {middle - width / 2, (y1 + y2) / 2 - small / 2, width, small})) continue;
-      plot.page.text(middle, (y1 + y2) / 2 + 0.36 * small, value ? cell_text(*value) : "–",
-                     value && on_dark(*value) && each_column == 1 ? "on-dark" : "ink", small, Anchor::middle);
-    }
+struct Cells {
+  const figure::PriorMap& map;
+  std::size_t rows, columns;
+  explicit Cells(const figure::PriorMap& of)
+      : map(of), rows(of.scale_edges.size() - 1), columns(of.width_edges.size() - 1) {}
+  [[nodiscard]] const std::optional<double>& at(std::size_t i, std::size_t j) const {
+    return map.decibans[i * rows + j];
   }
+  [[nodiscard]] Box cell(const Plot& plot, std::size_t i, std::size_t j) const {
+    const double x = plot.x.px(map.width_edges[i]), y = plot.y.px(map.scale_edges[j + 1]);
+    return {x, y, plot.x.px(map.width_edges[i + 1]) - x, plot.y.px(map.scale_edges[j]) - y};
+  }
+};
+
+void fill_cells(Plot& plot, const Cells& table) {
+  for (std::size_t i = 0; i < table.columns; ++i)
+    for (std::size_t j = 0; j < table.rows; ++j) {
+      Box cell = table.cell(plot, i, j);
+      cell.width += 0.3, cell.height += 0.3;
+      if (table.at(i, j)) plot.page.rect(cell, cell_role(*table.at(i, j)));
+    }
+}
+
+/// The number of a cell, if it stands clear on one lightness and nothing crosses it.
+void print_number(Plot& plot, const Cells& table, std::size_t i, std::size_t j) {
+  const Box cell = table.cell(plot, i, j);
+  const auto& value = table.at(i, j);
+  const std::string text = value ? cell_text(*value) : "–";
+  const double width = text_width(text, small), middle = cell.x + cell.width / 2;
+  const Box box = {middle - width / 2, cell.y + cell.height / 2 - small / 2, width, small};
+  if (box.x < plot.left() || box.right() > plot.right() || crossed(plot, table.map, box)) return;
+  const bool dark = value && on_dark(*value);
+  for (std::size_t k = 0; k < table.columns; ++k) {
+    const Box other = table.cell(plot, k, j);
+    const bool beneath = other.x < box.right() && box.x < other.right();
+    const auto& other_value = table.at(k, j);
+    if (beneath && (other_value && on_dark(*other_value)) != dark) return;
+  }
+  plot.page.text(middle, cell.y + cell.height / 2 + 0.36 * small, text, dark ? "on-dark" : "ink", small,
+                 Anchor::middle);
+}
+
+/// With many cells every second or third one carries its number.
+void numbers(Plot& plot, const Cells& table) {
+  double widest = 0;
+  for (const auto& value : table.map.decibans)
+    if (value) widest = std::max(widest, text_width(cell_text(*value), small));
+  const Box cell = table.cell(plot, 0, 0);
+  const auto each_column = static_cast<std::size_t>(std::max(1.0, std::ceil((widest + 4) / cell.width)));
+  const auto each_row = static_cast<std::size_t>(std::max(1.0, std::ceil(1.3 * small / cell.height)));
+  for (std::size_t i = each_column / 2; i < table.columns; i += each_column)
+    for (std::size_t j = each_row / 2; j < table.rows; j += each_row) print_number(plot, table, i, j);
 }
 
 }  // namespace
@@ -80,7 +106,9 @@ void cells(Plot& plot, const figure::PriorMap& map) {
 std::string render_svg(const figure::PriorMap& map, const SvgStyle& style) {
   const bool narrow = style.width == FigureWidth::one_column;
   Plot plot = render::svg::plot(map.words, map.width, map.scale, narrow ? 190 : 300, style);
-  cells(plot, map);
+  const Cells table(map);
+  fill_cells(plot, table);
+  numbers(plot, table);
   for (const figure::Curve& line : map.turns) {
     plot.page.shape(through(line, plot.x, plot.y, false), "turn-halo");
     plot.page.shape(through(line, plot.x, plot.y, false), "turn");

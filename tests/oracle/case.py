@@ -3,8 +3,10 @@
 import math
 
 import numpy as np
+from mpmath import mp
 
-from likelihood import LD, Band, Exact, Normal
+import noncentral_t
+from likelihood import LD, Band, Exact, Normal, ld, log_likelihood
 from marginal import Analysis, Effect, Spread
 from posterior import LEVELS, Answers, OwnEffect
 from table import exact
@@ -31,10 +33,26 @@ def prior_lines(effect, spread):
             ["spread", spread.family[0], *[exact(float(x)) for x in spread.family[1:]]]]
 
 
+def at_zero(studies):
+    """The log likelihood at mean 0 and spread 0, bands from their definition (they may lie deep in a tail)."""
+    with mp.workdps(40):
+        total = mp.mpf(0)
+        for study in studies:
+            if isinstance(study, Band):
+                total += mp.log(sum(mp.exp(noncentral_t.log_band(float(a), float(b), study.df, 0, 30))
+                                    for a, b in zip(study.low, study.high)))
+            else:
+                value = log_likelihood([study], [LD(0)], [LD(0)])[0]
+                total += mp.mpf(float(value)) + mp.mpf(float(value - LD(float(value))))
+        return ld(total)
+
+
 def marginal_lines(studies, effect, spread, second=True, floor=5e-11):
     """The four log marginal likelihoods; `second` computes them again at other nodes for the error."""
     first = Analysis(studies, effect, spread).log_marginals()
     other = Analysis(studies, effect, spread, 1).log_marginals() if second else first
+    if any(isinstance(s, Band) for s in studies):
+        first[0] = other[0] = at_zero(studies)
     lines = []
     for model, value, again in zip(MODELS, first, other):
         error = max(abs(float(value - again)), 3e-19 * size(studies, value), floor if not second else 1e-15)

@@ -239,7 +239,7 @@ void compare(GroupResult& result, std::span<const Study> studies, const Split& g
         mix(fine.fixed_deviating, fine.random_deviating), mix(fine.fixed_common, fine.random_common),
         mix(coarse.fixed_deviating, coarse.random_deviating), mix(coarse.fixed_common, coarse.random_common));
   }
-  constexpr double promised = 1e-6;
+  constexpr double promised = 1e-5;
   result.accurate = result.fixed.abs_error <= promised && result.random->abs_error <= promised;
 }
 

@@ -14,6 +14,8 @@ namespace {
 using namespace render;
 using namespace render::text;
 
+using Rows = std::vector<std::vector<std::string>>;
+
 std::string weight(const std::optional<LogBayesFactor>& bf) { return bf ? decibans_text(bf->log_bf) : "–"; }
 
 std::vector<std::string> triple_row(const std::string& name, const EvidenceTriple& t) {
@@ -22,70 +24,105 @@ std::vector<std::string> triple_row(const std::string& name, const EvidenceTripl
 
 std::string evidence(const ReplicateAnalysis& a, const TextStyle& style) {
   const ReplicateResult& r = a.result;
-  std::vector<std::vector<std::string>> rows = {{"Evidence in decibans", "same", "varying", "averaged"}};
-  rows.push_back(triple_row("Replications, from the originals' posterior (flat)", r.flat));
-  rows.push_back(triple_row("Added by the replications (all over originals)", r.carried));
-  rows.push_back(triple_row("An effect? Originals alone", r.originals_alone));
-  rows.push_back(triple_row("An effect? Replications alone", r.replications_alone));
-  rows.push_back(triple_row("An effect? All studies", r.all));
-  rows.push_back(triple_row("All, originals selected for significance", r.selected_all));
-  rows.push_back(triple_row("Added, originals so selected", r.selected_carried));
+  Rows rows = {{"Evidence for an effect, in decibans", "same", "varying", "averaged"}};
+  rows.push_back(triple_row("Originals alone", r.originals_alone));
+  rows.push_back(triple_row("What replications add to them [1]", r.carried));
+  rows.push_back(triple_row("All together", r.all));
+  rows.push_back(triple_row("Replications alone", r.replications_alone));
+  rows.push_back(triple_row("Added, originals from a flat prior [2]", r.flat));
+  rows.push_back(triple_row("All, originals read as selected [3]", r.selected_all));
+  rows.push_back(triple_row("Added to originals so read [3]", r.selected_carried));
   std::string out = table(rows, style);
-  for (const EvidenceTriple* t : {&r.flat, &r.carried, &r.selected_all}) {
-    if (!t->reason.empty()) out += paragraph(t->reason, style, 2);
-  }
+  out += paragraph("[1] Ly, Etz, Marsman & Wagenmakers (2019): m(all)/m(originals), an effect against none.",
+                   style, 2, 4);
+  out += paragraph(
+      "[2] Verhagen & Wagenmakers (2014): the originals' posterior from a flat prior. " + r.flat.reason,
+      style, 2, 4);
+  out += paragraph(
+      fmt::format("[3] Their likelihood divided by the probability of p < {:g}. ", a.options.alpha) +
+          r.selected_all.reason,
+      style, 2, 4);
   return out + "\n";
 }
 
-std::string summary_text(const Summary& s) {
-  if (!s.median) return s.reason.empty() ? "–" : s.reason;
-  return fmt::format("{} [{}, {}]", figure::number_text(*s.median, 2),
-                     figure::number_text(s.lower.value_or(0), 2),
-                     figure::number_text(s.upper.value_or(0), 2));
+std::string number(const std::optional<double>& value) {
+  return value ? figure::number_text(*value, 2) : "–";
+}
+
+std::vector<std::string> summary_row(const std::string& name, const Summary& s) {
+  return {name, number(s.median),
+          s.lower && s.upper ? fmt::format("[{}, {}]", number(s.lower), number(s.upper)) : "–"};
 }
 
 std::string estimates(const ReplicateAnalysis& a, const TextStyle& style) {
   const ReplicateResult& r = a.result;
-  std::vector<std::vector<std::string>> rows = {
-      {"Mean effect", fmt::format("median [{:g}% interval]", 100 * a.options.level)},
-      {"originals", summary_text(r.effect_originals)},
-      {"originals, read as selected", summary_text(r.effect_selected)},
-      {"replications", summary_text(r.effect_replications)},
-      {"all", summary_text(r.effect_all)}};
-  std::string out = table(rows, style);
-  if (r.shrinkage) {
-    out += paragraph(fmt::format("From the originals to all studies the effect keeps {:.0f} % of its size.",
-                                 100 * *r.shrinkage),
-                     style, 2);
-  }
-  return out + "\n";
+  const std::string level = fmt::format("{:g}% interval", 100 * a.options.level);
+  Rows rows = {{"Mean effect, if there is one", "median", level}};
+  rows.push_back(summary_row("originals", r.effect_originals));
+  rows.push_back(summary_row("originals, read as selected", r.effect_selected));
+  rows.push_back(summary_row("replications", r.effect_replications));
+  rows.push_back(summary_row("all", r.effect_all));
+  return table(rows, style) + "\n";
 }
 
-std::string prediction_sentence(const ReplicateAnalysis& a, const Prediction& p) {
-  const std::string label = a.rows.studies[p.study].label;
-  if (p.inside && p.below) {
-    return fmt::format(
-        "{} lies {} the {:g} % interval that the originals predict (predictive probability of less: {:.3f}).",
-        label, *p.inside ? "inside" : "outside", 100 * a.options.level, *p.below);
+std::string observed_effect(const Study& study) {
+  const auto effect = figure::printed_effect(study);
+  return effect ? figure::number_text(*effect, 2) : "–";
+}
+
+std::string predictions(const ReplicateAnalysis& a, const TextStyle& style) {
+  Rows rows = {{"Replication", "observed", "predicted", "inside?", "P(less)"}};
+  std::string notes;
+  for (const Prediction& p : a.result.predictions) {
+    const Study& study = a.rows.studies[p.study];
+    const std::string interval = p.effect ? fmt::format("[{}, {}]", figure::number_text(p.effect->low, 2),
+                                                        figure::number_text(p.effect->high, 2))
+                                          : "–";
+    rows.push_back({study.label, observed_effect(study), interval,
+                    p.inside ? (*p.inside ? "yes" : "no") : "–",
+                    p.below ? fmt::format("{:.3f}", *p.below) : "–"});
+    if (p.band) {
+      notes +=
+          paragraph(fmt::format("{} is known as a range only; the originals gave it a probability of {:.3f}.",
+                                study.label, *p.band),
+                    style, 2, 2);
+    }
   }
-  if (p.band)
-    return fmt::format("{} is known as a bound, which the originals gave a probability of {:.3f}.", label,
-                       *p.band);
-  return fmt::format("{}: {}", label, p.reason);
+  return table(rows, style) + notes + "\n";
+}
+
+std::string discounts(const ReplicateAnalysis& a, const TextStyle& style) {
+  Rows rows = {{"If the originals count with weight", "same", "varying", "averaged"}};
+  for (const Discounted& d : a.result.discounted) {
+    rows.push_back(triple_row(figure::number_text(d.weight, 2), d.effect));
+  }
+  return table(rows, style) +
+         paragraph("Decibans for an effect from all studies; 0 leaves the originals out, 1 takes them whole.",
+                   style, 2) +
+         "\n";
+}
+
+std::string cautions(const ReplicateAnalysis& a, const TextStyle& style) {
+  std::string out = heading("Cautions", style);
+  for (const std::string& sentence : caution_sentences(a.rows, a.result.cautions)) {
+    out += paragraph(sentence, style, 2, 2);
+  }
+  if (!a.result.accurate) {
+    out += paragraph("Not every integral reached its accuracy; `--json` shows which errors to expect.", style,
+                     2, 2);
+  }
+  return out + paragraph(usual_caution(), style, 2, 2);
 }
 
 }  // namespace
 
 std::string render_text(const ReplicateAnalysis& a, const TextStyle& style) {
-  std::string out = paragraph("Did it replicate? " + replicate_verdict(a), style) + "\n";
-  out += evidence(a, style) + estimates(a, style);
-  out += heading("As predicted?", style);
-  for (const Prediction& p : a.result.predictions) out += paragraph(prediction_sentence(a, p), style, 2, 2);
-  out += "\n";
-  for (const std::string& label : a.rows.left_out)
-    out += paragraph(fmt::format("Left out as asked: {}.", label), style);
-  for (const Diagnostic& d : a.rows.cautions) out += paragraph("Caution: " + d.what, style, 0, 2);
-  return out + paragraph(usual_caution(), style);
+  std::string out = paragraph("Did it replicate? " + replicate_verdict(a), style);
+  for (const std::string& sentence : {prediction_sentence(a), shrinkage_sentence(a)}) {
+    if (!sentence.empty()) out += paragraph(sentence, style);
+  }
+  out += "\n" + evidence(a, style) + estimates(a, style) + predictions(a, style) + discounts(a, style);
+  return out + paragraph(assumed_sentence(a.rows, true), style) + "\n" + cautions(a, style);
 }
 
 }  // namespace steelyard

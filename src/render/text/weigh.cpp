@@ -43,49 +43,49 @@ std::string rows_table(const WeighAnalysis& a, const TextStyle& style) {
   return table(rows, style);
 }
 
-// What would change the reading of a study, a sentence each.
-std::string sentences(const Weighing& w) {
+std::string width_sentence(const Weighing& w, const EffectPrior& prior) {
+  if (!w.turning_factor || !w.turning_width) return "No width of the prior turns the evidence.";
+  const bool wider = *w.turning_factor > 1.0;
+  return fmt::format("With a prior {} than {:.3g} ({} as stated) the evidence would turn to {}.",
+                     wider ? "wider" : "narrower", *w.turning_width, figure::number_text(*width_of(prior), 3),
+                     w.bf.log_bf >= 0.0 ? "no effect" : "an effect");
+}
+
+std::string directions_sentence(const Weighing& w) {
+  if (!w.greater || !w.less || !w.either) return "";
+  return fmt::format("Positive effects only: {} decibans; negative only: {}; either: {}. ", weight(w.greater),
+                     weight(w.less), weight(w.either));
+}
+
+std::string attitudes_sentence(const Weighing& w) {
+  if (!w.sceptic || !w.enthusiast) return "";
+  return fmt::format("A sceptic's prior gives {} decibans, an enthusiast's (for a {} effect) {}. ",
+                     weight(w.sceptic), w.enthusiast_side == "less" ? "negative" : "positive",
+                     weight(w.enthusiast));
+}
+
+std::string units_sentence(const Weighing& w, const Study& study) {
   std::string text;
-  if (w.sceptic && w.enthusiast) {
-    text += fmt::format("A sceptic finds {} decibans, an enthusiast {}. ", weight(w.sceptic),
-                        weight(w.enthusiast));
-  }
-  if (w.turning_width) {
-    text += fmt::format("The evidence turns at a prior {:.3g} times as wide. ", *w.turning_factor);
-  } else {
-    text += "No width of the prior turns the evidence. ";
-  }
-  if (w.bf.log_bf > 0.0) {
-    text += fmt::format("Whoever holds prior odds of more than {} against an effect still doubts. ",
-                        odds_text(w.bf.log_bf));
-  }
-  text += fmt::format("No prior could make more of it than {} decibans", decibans_text(w.bound.log_bf));
-  if (w.log_p_bound) text += fmt::format(" (from p alone: {})", decibans_text(*w.log_p_bound));
-  text += ". ";
   if (w.superiority) {
-    text += fmt::format("Chance that a member of group 1 beats one of group 2: {:.2f} [{:.2f}, {:.2f}]. ",
+    text += fmt::format("{} {:.2f} [{:.2f}, {:.2f}]. ",
+                        study.design == Design::one_sample
+                            ? "Chance that a random score lies above the comparison value:"
+                            : "Chance that a random member of group 1 beats one of group 2:",
                         w.superiority->median, w.superiority->lower, w.superiority->upper);
   }
   if (w.raw) {
-    text += fmt::format("In raw units: {:.3g} [{:.3g}, {:.3g}]. ", w.raw->median, w.raw->lower, w.raw->upper);
+    text += fmt::format("In raw units the effect is {:.3g} [{:.3g}, {:.3g}]. ", w.raw->median, w.raw->lower,
+                        w.raw->upper);
   }
   return text;
 }
 
-std::string region_sentence(const RegionResult& r) {
-  std::string text = fmt::format("Region {:g} to {:g}: ", r.asked.region.low, r.asked.region.high);
-  if (r.negligible) {
-    text += favour_sentence(r.negligible->log_bf, "an effect inside", "one outside");
-  } else {
-    text += r.reason;
-  }
-  text += fmt::format(" Given an effect, it lies inside with probability {:.3f} (before the data {:.3f}).",
-                      r.mean_effect.inside, r.prior_inside);
-  if (r.log_sign_odds) text += fmt::format(" Odds of a positive effect: {}.", odds_text(*r.log_sign_odds));
-  if (r.above_threshold) {
-    text += fmt::format(" P(effect in a new study > {:g}) = {:.3f}.", *r.asked.threshold, *r.above_threshold);
-  }
-  return text;
+// What would change the reading of a study, a sentence each.
+std::string sentences(const Weighing& w, const Study& study, const EffectPrior& prior) {
+  std::string text = directions_sentence(w) + attitudes_sentence(w) + width_sentence(w, prior);
+  text += fmt::format(" No prior could make more of it than {} decibans", decibans_text(w.bound.log_bf));
+  if (w.log_p_bound) text += fmt::format("; its p alone no more than {}", decibans_text(*w.log_p_bound));
+  return text + ". " + units_sentence(w, study);
 }
 
 constexpr std::size_t most_described = 20;
@@ -93,7 +93,9 @@ constexpr std::size_t most_described = 20;
 }  // namespace
 
 std::string render_text(const RegionResult& region, const TextStyle& style) {
-  return paragraph(region_sentence(region), style);
+  std::string out;
+  for (const std::string& sentence : region_sentences(region)) out += paragraph(sentence, style);
+  return out;
 }
 
 std::string render_text(const WeighAnalysis& a, const TextStyle& style) {
@@ -103,8 +105,13 @@ std::string render_text(const WeighAnalysis& a, const TextStyle& style) {
     const Weighing& w = a.result.rows[i];
     const Study& study = a.rows.studies[w.study];
     out += paragraph(fmt::format("{} (line {}): {}", study.label, study.line, study.how), style, 0, 2);
-    out += paragraph(sentences(w), style, 2);
-    if (w.region) out += paragraph(region_sentence(*w.region), style, 2);
+    if (a.result.rows.size() > 1) {
+      out += paragraph(weigh_sentence(w, study, a.rows.options.priors.effect.direction), style, 2);
+    }
+    out += paragraph(sentences(w, study, a.rows.options.priors.effect), style, 2);
+    if (w.region) {
+      for (const std::string& sentence : region_sentences(*w.region)) out += paragraph(sentence, style, 2);
+    }
     for (const Diagnostic& d : w.cautions) out += paragraph("Caution: " + d.what, style, 2);
     for (const std::string& caution : study.cautions) out += paragraph("Caution: " + caution, style, 2);
   }

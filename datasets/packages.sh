@@ -1,7 +1,7 @@
 # Which Debian packages are needed, and how the missing ones are installed. Sourced by the scripts.
 
 build_packages="g++ cmake ninja-build libboost-dev libeigen3-dev nlohmann-json3-dev libfmt-dev libcli11-dev"
-test_packages="$build_packages catch2 python3 python3-jsonschema"
+test_packages="$build_packages catch2 python3 python3-jsonschema chromium librsvg2-bin fonts-dejavu-core"
 
 # install_missing PACKAGE...: asks the package system; goes to the network only when something is missing.
 install_missing() {

@@ -49,7 +49,7 @@ std::string finding(const PriorGrid& grid, const PriorMap& map) {
       grid.scales.back(), number_text(low, 1), number_text(high, 1));
   if (low > 0) return out + " It speaks for an effect under every prior of the grid.";
   if (high < 0) return out + " It speaks for no effect under every prior of the grid.";
-  return out + " The line shows where the verdict turns.";
+  return out + " The verdict turns within this range.";
 }
 
 }  // namespace

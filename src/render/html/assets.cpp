@@ -26,6 +26,7 @@ section{padding:26px 0 6px;border-top:1px solid var(--rule);margin-top:22px}
 h2{font-size:1.25rem;margin:0 0 12px}
 p,li{max-width:62rem}
 figure{margin:0 0 22px;max-width:760px}
+#figure-forest{max-width:1000px}
 figcaption{font-size:.85rem;color:var(--soft)}
 .y-figure{max-width:100%;height:auto;display:block}
 .only-wide .y-figure{width:100%}
@@ -51,7 +52,7 @@ pre{background:var(--wash);padding:12px 14px;overflow-x:auto;font:.9rem/1.5 "Dej
 [hidden]{display:none!important}
 @media (max-width:640px){main,header,footer{padding:0 12px}header{padding-top:16px}.only-wide{display:none}.only-narrow{display:block}.only-narrow .y-figure{width:100%}.verdict .strong{font-size:1.05rem}}
 @page{size:A4;margin:14mm}
-@media print{:root{color-scheme:light}body{font-size:9.5pt}main,header,footer{max-width:none;padding:0}nav,#readout,.slide{display:none!important}.only-wide{display:block}.only-narrow{display:none}
+@media print{:root{color-scheme:light}th button{border:0}body{font-size:9.5pt}main,header,footer{max-width:none;padding:0}nav,#readout,.slide{display:none!important}.only-wide{display:block}.only-narrow{display:none}
 .scroll{overflow:visible}table{font-size:7pt;width:100%}th,td{padding:2px 5px 2px 0}td.words{min-width:0}tr,figure,.verdict{break-inside:avoid}thead{display:table-header-group}h2{break-after:avoid}
 figure .y-figure{width:auto;max-width:100%;max-height:235mm}.pair{display:block}section{margin-top:10px;padding:12px 0 0}}
 )css";
@@ -136,7 +137,8 @@ std::uint32_t nibble(char c) { return static_cast<std::uint32_t>(c <= '9' ? c - 
 
 /// Hexadecimal digits to base64.
 std::string base64(const std::string& hex) {
-  static constexpr std::string_view alphabet = "ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmnopqrstuvwxyz0123456789+/";
+  static constexpr std::string_view alphabet =
+      "ABCDEFGHIJKLMNOPQRSTUVWXYZabcdefghijklmnopqrstuvwxyz0123456789+/";
   std::string out;
   for (std::size_t at = 0; at < hex.size(); at += 6) {
     std::uint32_t bits = 0;

@@ -12,17 +12,23 @@ using namespace render;
 
 /// Text in which nothing is read as Markdown or HTML.
 std::string plain(const std::string& text) {
-  static const std::string special = "\\`*_{}[]<>#|~!$";
+  static const std::string special = "\\`*_{}[]#|~!$";
   std::string out;
   for (const char c : encode(clean(text))) {
-    if (c == '&') {
-      out += "&amp;";
-      continue;
+    switch (c) {
+      case '&':
+        out += "&amp;";
+        break;
+      case '<':
+        out += "&lt;";
+        break;
+      case '>':
+        out += "&gt;";
+        break;
+      default:
+        if (special.find(c) != std::string::npos) out += '\\';
+        out += c;
     }
-    if (special.find(c) != std::string::npos) out += '\\';
-    out += c;
-    // A bare address would be made a link.
-    if (c == ':' || c == '@') out += "\xE2\x81\xA0";
   }
   return out;
 }

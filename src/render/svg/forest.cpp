@@ -166,11 +166,14 @@ void background(Drawing& page, const Layout& at, double top, double bottom) {
   }
 }
 
-double footer(Drawing& page, const figure::Forest& forest, const Layout& at, double y) {
+/// The page around an embedded forest answers the two questions itself.
+double footer(Drawing& page, const figure::Forest& forest, const Layout& at, double y, bool embedded) {
   const double room = at.width - 2 * margin;
   y += 1.6 * at.size;
-  y = page.prose(margin, y, "Is there an effect? " + forest.verdict.effect, room, "ink", at.size + 1);
-  y = page.prose(margin, y + 3, "Does it vary? " + forest.verdict.heterogeneity, room, "ink", at.size + 1);
+  if (!embedded) {
+    y = page.prose(margin, y, "Is there an effect? " + forest.verdict.effect, room, "ink", at.size + 1);
+    y = page.prose(margin, y + 3, "Does it vary? " + forest.verdict.heterogeneity, room, "ink", at.size + 1);
+  }
   const std::string key = fmt::format(
       "Hill: likelihood of the study alone (light brown: what is known after pooling). Triangle under its "
       "line: "
@@ -217,7 +220,7 @@ std::string render_svg(const figure::Forest& forest, const SvgStyle& style) {
   const double axis_bottom = axis_below(page, at.effect, bottom + 2, at.size - 0.5);
   page.text(at.weight.px(0.0), axis_bottom - descent * (at.size - 0.5), "decibans", "ink", at.size - 0.5,
             Anchor::middle);
-  page.height = footer(page, forest, at, axis_bottom);
+  page.height = footer(page, forest, at, axis_bottom, style.embedded);
   return to_bytes(page, style);
 }
 

@@ -61,7 +61,9 @@ struct Bound {
 std::vector<Bound> bind(CLI::App& app, Command command) {
   std::vector<Bound> bound;
   const auto add = [&](const OptionInfo* info, const std::string& name, bool takes_value) {
-    CLI::Option* option = takes_value ? app.add_option(name) : app.add_flag(name);
+    const std::string names =
+        info == nullptr || info->brief.empty() ? name : fmt::format("{},{}", info->brief, name);
+    CLI::Option* option = takes_value ? app.add_option(names) : app.add_flag(names);
     if (takes_value) option->expected(1)->allow_extra_args(false);
     option->multi_option_policy(CLI::MultiOptionPolicy::TakeAll);
     bound.push_back({info, name, option});
@@ -78,7 +80,9 @@ const Bound* lacks_value(const std::vector<Bound>& bound, const std::vector<std:
   for (std::size_t i = 0; i < words.size(); ++i) {
     if (words[i] == "--") return nullptr;
     const auto is_this = [&](const Bound& b) {
-      return b.name == words[i] && (b.info == nullptr || b.info->kind != ValueKind::none);
+      const bool named =
+          b.name == words[i] || (b.info != nullptr && !b.info->brief.empty() && b.info->brief == words[i]);
+      return named && (b.info == nullptr || b.info->kind != ValueKind::none);
     };
     const auto found = std::find_if(bound.begin(), bound.end(), is_this);
     if (found == bound.end()) continue;
@@ -196,6 +200,24 @@ void read_options(const CommandInfo& command, std::vector<std::string> words, Re
   for (std::string& problem : settle(request.options)) request.problems.push_back(std::move(problem));
 }
 
+// The command line as a shell would read it again.
+std::string as_typed(const std::vector<std::string>& arguments) {
+  constexpr std::string_view plain =
+      "abcdefghijklmnopqrstuvwxyzABCDEFGHIJKLMNOPQRSTUVWXYZ0123456789-_./,:=+@%";
+  std::string line = "steelyard";
+  for (const std::string& argument : arguments) {
+    line += ' ';
+    if (!argument.empty() && argument.find_first_not_of(plain) == std::string::npos) {
+      line += argument;
+      continue;
+    }
+    line += '\'';
+    for (const char c : argument) line += c == '\'' ? std::string("'\\''") : std::string(1, c);
+    line += '\'';
+  }
+  return line;
+}
+
 }  // namespace
 
 Request read_arguments(const std::vector<std::string>& arguments) {
@@ -221,6 +243,7 @@ Request read_arguments(const std::vector<std::string>& arguments) {
     return request;
   }
   std::vector<std::string> rest(arguments.begin() + 1, arguments.end());
+  request.options.typed = as_typed(arguments);
   if (std::any_of(rest.begin(), std::find(rest.begin(), rest.end(), "--"), asks_for_help)) {
     request.kind = Request::Kind::help;
     return request;

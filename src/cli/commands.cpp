@@ -50,6 +50,11 @@ constexpr std::array draw_examples = {
     Example{"steelyard draw funnel studies.csv --size one-column --svg funnel.svg", "for a narrow column"},
 };
 
+constexpr std::array report_examples = {
+    Example{"steelyard report studies.csv --html report.html", "one file to open, send or print"},
+    Example{"steelyard report studies.csv --markdown report.md", "for a supplement or a pull request"},
+};
+
 constexpr std::array commands = {
     CommandInfo{
         Command::pool, "pool", "weigh the printed evidence of several studies together",
@@ -92,6 +97,15 @@ constexpr std::array commands = {
                 "the figure "
                 "goes to standard output.",
                 draw_examples, figure_kinds, run_draw},
+    CommandInfo{
+        Command::report, "report", "write the whole analysis as one file",
+        "Pools the studies, tries how firm the answer is, and writes everything a reader needs into one file "
+        "that "
+        "opens without a network: verdict, forest, evidence, estimates, firmness, the table of studies, "
+        "every "
+        "assumption, and a methods paragraph with references. Without --html or --markdown the HTML goes to "
+        "standard output.",
+        report_examples, "", run_report},
 };
 
 }  // namespace

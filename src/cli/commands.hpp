@@ -10,7 +10,15 @@ namespace steelyard::cli {
 
 struct Options;
 
-enum class Command : unsigned { pool = 1, check = 2, weigh = 4, stress = 8, replicate = 16, draw = 32 };
+enum class Command : unsigned {
+  pool = 1,
+  check = 2,
+  weigh = 4,
+  stress = 8,
+  replicate = 16,
+  draw = 32,
+  report = 64
+};
 
 /// Several commands.
 class CommandSet {
@@ -53,5 +61,6 @@ Exit run_weigh(const Options& options);
 Exit run_stress(const Options& options);
 Exit run_replicate(const Options& options);
 Exit run_draw(const Options& options);
+Exit run_report(const Options& options);
 
 }  // namespace steelyard::cli

@@ -29,7 +29,8 @@ constexpr std::string_view file_meaning =
     "the columns.";
 
 std::string option_help(const OptionInfo& option, std::size_t width) {
-  return fmt::format("  {}{}{}\n", option.name, option.value.empty() ? "" : " ", option.value) +
+  return fmt::format("  {}{}{}{}{}\n", option.brief, option.brief.empty() ? "" : ", ", option.name,
+                     option.value.empty() ? "" : " ", option.value) +
          wrapped(option_meaning(option), 6, width);
 }
 

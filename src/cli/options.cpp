@@ -12,8 +12,8 @@ namespace steelyard::cli {
 
 namespace {
 
-constexpr CommandSet pooling =
-    Command::pool | Command::stress | Command::replicate | CommandSet(Command::draw);
+constexpr CommandSet pooling = Command::pool | Command::stress | Command::replicate |
+                               CommandSet(Command::draw) | CommandSet(Command::report);
 constexpr CommandSet with_effect_prior = pooling | CommandSet(Command::weigh);
 constexpr CommandSet all_commands = with_effect_prior | CommandSet(Command::check);
 constexpr CommandSet with_numbers = Command::pool | Command::check | CommandSet(Command::weigh) |
@@ -195,10 +195,10 @@ std::string put_finite(std::optional<double>& target, std::string_view value, bo
 }
 
 std::string put_region(Options& o, std::string_view value) {
-  const std::size_t colon = value.find(':');
+  const std::size_t colon = std::min(value.find(':'), value.size());
   const auto low = read_number(value.substr(0, colon));
-  const auto high = colon == std::string_view::npos ? std::nullopt : read_number(value.substr(colon + 1));
-  if (!low || !high || !(*low < *high)) {
+  const auto high = read_number(value.substr(std::min(colon + 1, value.size())));
+  if (!low || !high || *low >= *high) {
     return fmt::format("\"{}\" is not two numbers, the lower first. Give them like -0.1:0.1.", value);
   }
   o.region = Interval{*low, *high};
@@ -298,11 +298,17 @@ constexpr std::array table = {
                [](Options& o, std::string_view v) { return put_fraction(o.selection_alpha, v, "0.05"); }},
     OptionInfo{"--threads", ValueKind::number, "COUNT", "",
                "Threads to compute with. The result is the same for any number.", "1", false,
-               Command::stress | Command::draw, put_threads},
+               Command::stress | Command::draw | CommandSet(Command::report), put_threads},
     OptionInfo{"--size", ValueKind::choice, "SIZE", sizes,
                "Width of the figure: one column of a journal (85 mm) or two "
                "(180 mm).",
                "two-columns", false, Command::draw, put_size},
+    OptionInfo{"--html", ValueKind::file, "FILE", "", "Writes the report as one self-contained HTML file.",
+               "", false, Command::report, [](Options& o, std::string_view v) { return put_file(o.html, v); },
+               "-o"},
+    OptionInfo{"--markdown", ValueKind::file, "FILE", "", "Writes the report as Markdown, without figures.",
+               "", false, Command::report,
+               [](Options& o, std::string_view v) { return put_file(o.markdown, v); }},
     OptionInfo{"--svg", ValueKind::file, "FILE", "", "Writes the figure (of pool: the forest) as SVG.", "",
                false, Command::pool | Command::draw,
                [](Options& o, std::string_view v) { return put_file(o.svg, v); }},
@@ -371,12 +377,19 @@ std::vector<std::string> settle(Options& o) {
     problems.push_back("--spread-prior: " + in_one_line({*problem}));
   }
   if (o.threshold && !o.region) o.region = Interval{-0.1, 0.1};
-  if (o.svg == "-" && o.json == "-") {
-    problems.push_back(
-        "--svg - and --json - can't both go to standard output. Give one of them the name of a file.");
-  } else if (!o.svg.empty() && o.svg == o.json) {
-    problems.push_back(
-        fmt::format("--svg and --json name the same file \"{}\". Give them different names.", o.svg));
+  const std::pair<std::string_view, const std::string*> targets[] = {
+      {"--svg", &o.svg}, {"--json", &o.json}, {"--html", &o.html}, {"--markdown", &o.markdown}};
+  for (const auto& [first, a] : targets) {
+    for (const auto& [second, b] : targets) {
+      if (first >= second || a->empty() || *a != *b) continue;
+      problems.push_back(
+          *a == "-"
+              ? fmt::format(
+                    "{} - and {} - can't both go to standard output. Give one of them the name of a file.",
+                    second, first)
+              : fmt::format("{} and {} name the same file \"{}\". Give them different names.", second, first,
+                            *a));
+    }
   }
   return problems;
 }

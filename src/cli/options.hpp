@@ -27,11 +27,12 @@ struct Options {
   std::optional<Grade> fail_on;
   bool effect_prior_given = false;
   bool spread_prior_given = false;
-  std::string svg, json;     ///< "": not asked for; "-": standard output
-  bool from_result = false;  ///< `file` is a result to repeat
+  std::string svg, json, html, markdown;  ///< "": not asked for; "-": standard output
+  bool from_result = false;               ///< `file` is a result to repeat
   /// What was given, in order, for a run that starts from recorded options.
   std::vector<std::pair<const OptionInfo*, std::string>> given;
-  std::string kind;  ///< of figure
+  std::string typed;  ///< the whole command line, for the record
+  std::string kind;   ///< of figure
   bool one_column = false;
   /// Cells given as options, by column: one row without a file.
   std::vector<std::pair<std::string, std::string>> cells;
@@ -61,6 +62,7 @@ struct OptionInfo {
   CommandSet commands;  ///< those that take it
   /// Puts the value into the options; gives "" or a sentence that says what is wrong with it.
   std::string (*apply)(Options& options, std::string_view value);
+  std::string_view brief = "";  ///< a second name of one letter, with its dash
 };
 
 /// All options, in the order of the help.

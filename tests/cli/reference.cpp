@@ -22,7 +22,7 @@ TEST_CASE("every option is told by help, man page and all completions", "[cli][o
     for (const OptionInfo* option : options_of(command.id)) {
       const std::string name(option->name);
       INFO(command.name << " " << name);
-      CHECK_THAT(help, Catch::Contains("  " + name));
+      CHECK_THAT(help, Catch::Contains(" " + name));
       std::string in_roff;
       for (const char c : name) in_roff += c == '-' ? std::string("\\-") : std::string(1, c);
       CHECK_THAT(page, Catch::Contains(".B " + in_roff));

@@ -232,7 +232,7 @@ struct PriorGrid {
 [[nodiscard]] std::vector<Answer> removals(const StressResult& stress, std::span<const Study> studies);
 [[nodiscard]] std::optional<PriorGrid> prior_grid(const StressResult& stress, const Priors& priors);
 
-/// The grid as cells, with the line where the verdict turns.
+/// The grid as cells, with the line where the evidence changes sides.
 struct PriorMap {
   Words words;
   Scale width, scale;                            ///< logarithmic

@@ -57,10 +57,9 @@ std::string sway_finding(const Sway& sway, std::size_t turning) {
   const SwayRow& most = sway.rows.front();
   std::string out = fmt::format("Leaving out {} changes the evidence most: from {} to {} decibans.",
                                 most.label, deciban_number(*sway.decibans), deciban_number(*most.decibans));
-  if (turning == 0) return out + " No single removal turns the verdict.";
-  return out + fmt::format(" {} turn{} the verdict.",
-                           turning == 1 ? "One removal" : fmt::format("{} removals", turning),
-                           turning == 1 ? "s" : "");
+  if (turning == 0) return out + " No single removal makes it change sides.";
+  return out + (turning == 1 ? std::string(" One removal makes it change sides.")
+                             : fmt::format(" {} removals make it change sides.", turning));
 }
 
 }  // namespace

@@ -1,4 +1,4 @@
-// Evidence over a grid of priors, and the line where the verdict turns.
+// Evidence over a grid of priors, and the line where it changes sides.
 #include <algorithm>
 #include <cmath>
 
@@ -44,12 +44,13 @@ std::string finding(const PriorGrid& grid, const PriorMap& map) {
     if (value) low = std::min(low, *value), high = std::max(high, *value);
   if (low > high) return "No prior of the grid has a Bayes factor.";
   std::string out = fmt::format(
-      "With a {} from {:g} to {:g} and a {} from {:g} to {:g} the evidence runs from {} to {} decibans.",
+      "With a {} from {:.3g} to {:.3g} and a {} from {:.3g} to {:.3g} the evidence runs from {} to {} "
+      "decibans.",
       grid.width_name, grid.widths.front(), grid.widths.back(), grid.scale_name, grid.scales.front(),
       grid.scales.back(), number_text(low, 1), number_text(high, 1));
   if (low > 0) return out + " It speaks for an effect under every prior of the grid.";
   if (high < 0) return out + " It speaks for no effect under every prior of the grid.";
-  return out + " The verdict turns within this range.";
+  return out + " It changes sides within this range.";
 }
 
 }  // namespace

@@ -111,9 +111,9 @@ TEST_CASE("sway lists the largest change first and counts turned verdicts", "[sw
   const auto sway = figure::sway(std::log(10.0), answers);
   CHECK(sway.rows[0].label == "B");
   CHECK(sway.rows[2].label == "A");
-  CHECK(
-      sway.words.finding ==
-      "Leaving out B changes the evidence most: from 10.0 to −4.0 decibans. One removal turns the verdict.");
+  CHECK(sway.words.finding ==
+        "Leaving out B changes the evidence most: from 10.0 to −4.0 decibans. One removal makes it change "
+        "sides.");
   CHECK(figure::sway(std::log(10.0), answers, 2).rows.size() == 2);
 }
 

@@ -12,21 +12,27 @@ namespace {
 
 using namespace render::svg;
 
-constexpr double bounds[] = {2.5, 5, 10, 20};  // decibans between the shades
+/// Decibans between five shades, even steps up to the largest value of the map, rounded to two figures.
+std::vector<double> shade_bounds(const figure::PriorMap& map) {
+  double most = 5.0;
+  for (const auto& value : map.decibans)
+    if (value) most = std::max(most, std::fabs(*value));
+  const double unit = std::pow(10.0, std::floor(std::log10(most)) - 1);
+  std::vector<double> out;
+  for (const double share : {0.2, 0.4, 0.6, 0.8}) out.push_back(std::round(share * most / unit) * unit);
+  return out;
+}
 
-/// Shade 1 to 5 by size, of the side that the evidence favours.
-std::string cell_role(double decibans) {
-  int shade = 1;
-  for (const double bound : bounds) shade += std::fabs(decibans) > bound ? 1 : 0;
-  return fmt::format("{}-{}", decibans >= 0 ? "favour" : "oppose", shade);
+int shade(double decibans, const std::vector<double>& bounds) {
+  int out = 1;
+  for (const double bound : bounds) out += std::fabs(decibans) > bound ? 1 : 0;
+  return out;
 }
 
 std::string cell_text(double decibans) {
   const std::string text = figure::number_text(decibans, std::fabs(decibans) < 10 ? 1 : 0);
   return decibans > 0 ? "+" + text : text;
 }
-
-bool on_dark(double decibans) { return std::fabs(decibans) > bounds[2]; }
 
 /// Whether the turning line or the diamond of the priors in use runs through a box.
 bool crossed(const Plot& plot, const figure::PriorMap& map, const Box& box) {
@@ -50,10 +56,18 @@ bool crossed(const Plot& plot, const figure::PriorMap& map, const Box& box) {
 struct Cells {
   const figure::PriorMap& map;
   std::size_t rows, columns;
+  std::vector<double> bounds;
   explicit Cells(const figure::PriorMap& of)
-      : map(of), rows(of.scale_edges.size() - 1), columns(of.width_edges.size() - 1) {}
+      : map(of),
+        rows(of.scale_edges.size() - 1),
+        columns(of.width_edges.size() - 1),
+        bounds(shade_bounds(of)) {}
   [[nodiscard]] const std::optional<double>& at(std::size_t i, std::size_t j) const {
     return map.decibans[i * rows + j];
+  }
+  /// The darker two shades carry light text.
+  [[nodiscard]] bool dark(std::size_t i, std::size_t j) const {
+    return at(i, j) && shade(*at(i, j), bounds) > 3;
   }
   [[nodiscard]] Box cell(const Plot& plot, std::size_t i, std::size_t j) const {
     const double x = plot.x.px(map.width_edges[i]), y = plot.y.px(map.scale_edges[j + 1]);
@@ -66,7 +80,10 @@ void fill_cells(Plot& plot, const Cells& table) {
     for (std::size_t j = 0; j < table.rows; ++j) {
       Box cell = table.cell(plot, i, j);
       cell.width += 0.3, cell.height += 0.3;
-      if (table.at(i, j)) plot.page.rect(cell, cell_role(*table.at(i, j)));
+      const auto& value = table.at(i, j);
+      if (value)
+        plot.page.rect(cell,
+                       fmt::format("{}-{}", *value >= 0 ? "favour" : "oppose", shade(*value, table.bounds)));
     }
 }
 
@@ -78,12 +95,11 @@ void print_number(Plot& plot, const Cells& table, std::size_t i, std::size_t j) 
   const double width = text_width(text, small), middle = cell.x + cell.width / 2;
   const Box box = {middle - width / 2, cell.y + cell.height / 2 - small / 2, width, small};
   if (box.x < plot.left() || box.right() > plot.right() || crossed(plot, table.map, box)) return;
-  const bool dark = value && on_dark(*value);
+  const bool dark = table.dark(i, j);
   for (std::size_t k = 0; k < table.columns; ++k) {
     const Box other = table.cell(plot, k, j);
     const bool beneath = other.x < box.right() && box.x < other.right();
-    const auto& other_value = table.at(k, j);
-    if (beneath && (other_value && on_dark(*other_value)) != dark) return;
+    if (beneath && table.dark(k, j) != dark) return;
   }
   plot.page.text(middle, cell.y + cell.height / 2 + 0.36 * small, text, dark ? "on-dark" : "ink", small,
                  Anchor::middle);
@@ -95,8 +111,10 @@ void numbers(Plot& plot, const Cells& table) {
   for (const auto& value : table.map.decibans)
     if (value) widest = std::max(widest, text_width(cell_text(*value), small));
   const Box cell = table.cell(plot, 0, 0);
-  const auto each_column = static_cast<std::size_t>(std::max(1.0, std::ceil((widest + 4) / cell.width)));
-  const auto each_row = static_cast<std::size_t>(std::max(1.0, std::ceil(1.3 * small / cell.height)));
+  const auto each_column = static_cast<std::size_t>(
+      std::max(std::ceil(static_cast<double>(table.columns) / 12), std::ceil((widest + 4) / cell.width)));
+  const auto each_row = static_cast<std::size_t>(
+      std::max(std::ceil(static_cast<double>(table.rows) / 12), std::ceil(1.3 * small / cell.height)));
   for (std::size_t i = each_column / 2; i < table.columns; i += each_column)
     for (std::size_t j = each_row / 2; j < table.rows; j += each_row) print_number(plot, table, i, j);
 }
@@ -119,11 +137,16 @@ std::string render_svg(const figure::PriorMap& map, const SvgStyle& style) {
     plot.page.shape(ring, "turn-halo");
     plot.page.shape(ring, "turn");
   }
-  return finish(plot,
-                {"Numbers: weight of evidence in decibans, + for an effect, − for no effect; darker is more "
-                 "(steps at 2.5, 5, "
-                 "10 and 20). Diamond: the priors of this analysis. Heavy line: where the verdict turns."},
-                style);
+  std::string steps;
+  for (const double bound : table.bounds) steps += fmt::format("{}{:g}", steps.empty() ? "" : ", ", bound);
+  return finish(
+      plot,
+      {fmt::format(
+          "Numbers: weight of evidence in decibans, + for an effect, − for no effect; darker is more "
+          "(steps at {}). Diamond: the priors of this analysis. Heavy line, if any: where the evidence "
+          "changes sides.",
+          steps)},
+      style);
 }
 
 }  // namespace steelyard

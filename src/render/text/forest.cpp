@@ -47,7 +47,7 @@ std::string label_of(const figure::ForestStudy& study) {
 }
 
 Columns columns(const figure::Forest& forest, const TextStyle& style) {
-  Columns out{5, 0, 9, 8, 0, forest, style, style.utf8 ? blocks : plain};
+  Columns out{5, 0, 11, 8, 0, forest, style, style.utf8 ? blocks : plain};
   const auto widen = [&](std::size_t& column, const std::string& content) {
     column = std::max(column, cell_width(shown(content, style)));
   };
@@ -161,7 +161,7 @@ std::string head(const Columns& columns) {
   if (columns.plot > 0)
     out += U" " + fit(columns.plot < 24 ? U"Likelihood" : U"Likelihood of the effect", columns.plot, style);
   const std::string interval = fmt::format("{:g}%", 100 * columns.forest.level);
-  const std::string pooled = columns.number >= 18 ? "After pooling, " + interval : interval;
+  const std::string pooled = (columns.number >= 18 ? "After pooling, " : "Pooled, ") + interval;
   out += U" " + fit(shown(pooled, style), columns.number, style, true);
   out += U" " + fit(U"Decibans", columns.weight, style, true);
   if (columns.bar > 0) {

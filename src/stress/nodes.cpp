@@ -118,6 +118,22 @@ std::vector<double> mean_breaks(std::span<const Study> studies, const PriorShape
   return breaks;
 }
 
+std::vector<double> spread_breaks(std::span<const Study> studies, const SpreadPrior& prior) {
+  const Extent e = extent(studies);
+  const PriorShape s = shape(prior);
+  const double median = quantile(prior, 0.5);
+  const double first = 0.05 * std::min(e.pooled_se, median);
+  const double last = 1e4 * std::max({e.high - e.low, median, s.scale});
+  std::vector<double> breaks = {0.0};
+  for (double x = first; x < last; x *= 1.7) breaks.push_back(x);
+  for (const double p : {1e-6, 0.01, 0.25, 0.75, 0.99}) breaks.push_back(quantile(prior, p));
+  for (const double end : {s.low, s.high}) {
+    if (std::isfinite(end)) breaks.push_back(end);
+  }
+  tidy(breaks);
+  return breaks;
+}
+
 }  // namespace
 
 Axis mean_axis(std::span<const Study> studies, const EffectPrior& prior, int points) {
@@ -131,19 +147,43 @@ Axis open_mean_axis(std::span<const Study> studies, const EffectPrior& prior, in
   return axis(mean_breaks(studies, shape(prior), widest, 300.0), points, [](double) { return 0.0; });
 }
 
-Axis spread_axis(std::span<const Study> studies, const SpreadPrior& prior, int points) {
-  const Extent e = extent(studies);
-  const PriorShape s = shape(prior);
-  const double median = quantile(prior, 0.5);
-  const double first = 0.05 * std::min(e.pooled_se, median);
-  const double last = 1e4 * std::max({e.high - e.low, median, s.scale});
-  std::vector<double> breaks = {0.0};
-  for (double x = first; x < last; x *= 1.7) breaks.push_back(x);
-  for (const double p : {1e-6, 0.01, 0.25, 0.75, 0.99}) breaks.push_back(quantile(prior, p));
-  for (const double end : {s.low, s.high}) {
-    if (std::isfinite(end)) breaks.push_back(end);
+Axis mean_axis_for_all(std::span<const Study> studies, std::span<const EffectPrior> priors, int points) {
+  // The landmarks of the narrowest prior, followed as far as the widest one reaches.
+  PriorShape s = shape(priors.front());
+  const double widest = shape(priors.back()).scale;
+  std::vector<double> breaks = mean_breaks(studies, s, std::numeric_limits<double>::infinity(), 4000.0);
+  for (double reach = 1e3 * s.scale; reach < 1e3 * widest; reach *= 1.6) {
+    breaks.push_back(s.center + reach);
+    breaks.push_back(s.center - reach);
+  }
+  for (const EffectPrior& prior : priors) {
+    s = shape(prior);
+    for (const double end : {s.low, s.high}) {
+      if (std::isfinite(end)) breaks.push_back(end);
+    }
   }
   tidy(breaks);
+  return axis(breaks, points, [](double) { return 0.0; });
+}
+
+Axis spread_axis_for_all(std::span<const Study> studies, std::span<const SpreadPrior> priors, int points) {
+  const std::vector<double> narrow = spread_breaks(studies, priors.front());
+  const double last = spread_breaks(studies, priors.back()).back();
+  std::vector<double> breaks = narrow;
+  for (double x = narrow.back() * 1.7; x < last; x *= 1.7) breaks.push_back(x);
+  for (const SpreadPrior& prior : priors) {
+    const PriorShape s = shape(prior);
+    for (const double end : {s.low, s.high}) {
+      if (std::isfinite(end)) breaks.push_back(end);
+    }
+  }
+  tidy(breaks);
+  return axis(breaks, points, [](double) { return 0.0; });
+}
+
+Axis spread_axis(std::span<const Study> studies, const SpreadPrior& prior, int points) {
+  const PriorShape s = shape(prior);
+  std::vector<double> breaks = spread_breaks(studies, prior);
   std::erase_if(breaks, [&s](double x) { return x < s.low || x > s.high; });
   return axis(breaks, points, [&prior](double x) { return log_density(prior, x); });
 }

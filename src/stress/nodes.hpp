@@ -25,6 +25,12 @@ struct Axis {
 [[nodiscard]] Axis open_mean_axis(std::span<const Study> studies, const EffectPrior& prior, int points,
                                   double widest);
 
+/// Panels that suit each of several priors, with the weights of the rule alone: for many priors on one field.
+[[nodiscard]] Axis mean_axis_for_all(std::span<const Study> studies, std::span<const EffectPrior> priors,
+                                     int points);
+[[nodiscard]] Axis spread_axis_for_all(std::span<const Study> studies, std::span<const SpreadPrior> priors,
+                                       int points);
+
 /// Spreads: panels in geometric progression from well below the smallest standard error.
 [[nodiscard]] Axis spread_axis(std::span<const Study> studies, const SpreadPrior& prior, int points);
 

@@ -9,6 +9,7 @@
 #include <numeric>
 
 #include "numeric/chebyshev.hpp"
+#include "pool/field.hpp"
 #include "steelyard/numeric.hpp"
 #include "stress/nodes.hpp"
 
@@ -86,6 +87,7 @@ bool walk(std::span<const Study> studies, const Priors& priors, const std::funct
   at.push_back(0.0);
   std::vector<Likelihood> likelihoods;
   for (const Study& study : studies) likelihoods.push_back(likelihood(study));
+  const pool_room::Field field(likelihoods);
   Block block;
   block.width = at.size();
   block.weight = means.log_weight;
@@ -96,7 +98,7 @@ bool walk(std::span<const Study> studies, const Priors& priors, const std::funct
     block.log_spread_weight = block.fixed ? 0.0 : spreads.log_weight[b - 1];
     block.rows.assign(studies.size() * at.size(), 0.0);
     for (std::size_t i = 0; i < studies.size(); ++i) {
-      add_log_likelihood(likelihoods[i], block.fixed ? 0.0 : spreads.x[b - 1], at,
+      field.evaluate_one(i, block.fixed ? 0.0 : spreads.x[b - 1], at,
                          {block.rows.data() + i * at.size(), at.size()});
     }
     visit(block);

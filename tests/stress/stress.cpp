@@ -7,6 +7,7 @@
 
 #include "steelyard/stress.hpp"
 #include "steelyard/weigh.hpp"
+#include "stress/grid.hpp"
 #include "weigh/made_up.hpp"
 
 using namespace steelyard;
@@ -212,4 +213,38 @@ TEST_CASE("stress refuses what it can't answer") {
   options = {};
   options.exact_shares = 30;
   CHECK(code(options) == "exact-shares-out-of-range");
+}
+
+TEST_CASE("a large grid from one evaluation agrees with pooling anew, within its error") {
+  auto studies = five();
+  studies.push_back(made_up::study("Fischer", BandT{{{-2.03, 2.03}}, 34.0, 9.0}));
+  studies.push_back(made_up::two_groups("Gruber", 1.1, 14, true));
+  const std::vector<Priors> all = [] {
+    std::vector<Priors> some(4);
+    some[1].effect = {NormalPrior{0.2, 0.3}, Direction::greater};
+    some[1].spread = {HalfCauchyPrior{0.3}};
+    some[2].effect = {UniformPrior{-0.5, 1.0}, Direction::either};
+    some[2].spread = {UniformSpreadPrior{0.0, 0.5}};
+    some[3].effect = {StudentTPrior{0.35, 0.102, 3.0}, Direction::less};
+    some[3].spread = {LogNormalPrior{-1.0, 1.0}};
+    return some;
+  }();
+  for (const Priors& priors : all) {
+    bool accurate = true;
+    const auto grid = stressing::prior_grid(studies, priors, StressOptions{}, accurate, [] { return true; });
+    REQUIRE(grid.has_value());
+    REQUIRE(grid->effect.size() == 400);
+    CHECK(accurate);
+    for (const std::size_t cell : {7UL, 163UL, 244UL, 391UL}) {
+      Priors changed = priors;
+      changed.effect = with_width(priors.effect, grid->widths[cell / 20]);
+      changed.spread = with_scale(priors.spread, grid->scales[cell % 20]);
+      const auto pooled = pool(studies, changed);
+      INFO(to_text(changed.effect) << " " << to_text(changed.spread) << " error "
+                                   << grid->effect[cell].abs_error);
+      CHECK(std::abs(grid->effect[cell].log_bf - pooled.value->effect->log_bf) <=
+            grid->effect[cell].abs_error + pooled.value->effect->abs_error);
+      CHECK(grid->effect[cell].abs_error <= 1e-5);
+    }
+  }
 }

@@ -21,6 +21,8 @@ configure_package_config_file("${steelyard_package_files}/steelyard-config.cmake
                               INSTALL_DESTINATION "${steelyard_config_dir}")
 write_basic_package_version_file("${PROJECT_BINARY_DIR}/steelyard-config-version.cmake"
                                  COMPATIBILITY SameMinorVersion)
+# From the folder of the .pc file up to the prefix, so that the tree can be moved.
+file(RELATIVE_PATH steelyard_pc_to_prefix "/${CMAKE_INSTALL_LIBDIR}/pkgconfig" "/")
 configure_file("${steelyard_package_files}/steelyard.pc.in" "${PROJECT_BINARY_DIR}/steelyard.pc" @ONLY)
 install(FILES "${PROJECT_BINARY_DIR}/steelyard-config.cmake"
               "${PROJECT_BINARY_DIR}/steelyard-config-version.cmake"

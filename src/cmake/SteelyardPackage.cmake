@@ -1,8 +1,7 @@
-# Two Debian packages by CPack: `cpack -G DEB` in the build folder of a Release build that was
-# configured with -DCMAKE_INSTALL_PREFIX=/usr.
+# Two Debian packages by CPack: tests/package/deb.sh makes them from a Release build and asks lintian.
 set(CPACK_PACKAGE_NAME steelyard)
 set(CPACK_PACKAGE_VENDOR "Steelyard")
-set(CPACK_PACKAGE_CONTACT "Steelyard maintainers <maintainers@steelyard.org>")
+set(CPACK_PACKAGE_CONTACT "Steelyard maintainers <maintainers@steelyard.invalid>")
 set(CPACK_PACKAGE_VERSION "${PROJECT_VERSION}")
 set(CPACK_RESOURCE_FILE_LICENSE "${PROJECT_SOURCE_DIR}/LICENSE")
 set(CPACK_PACKAGING_INSTALL_PREFIX /usr)
@@ -16,20 +15,19 @@ set(CPACK_DEBIAN_FILE_NAME DEB-DEFAULT)
 set(CPACK_DEBIAN_COMMAND_PACKAGE_NAME steelyard)
 set(CPACK_DEBIAN_COMMAND_PACKAGE_SECTION science)
 set(CPACK_DEBIAN_COMMAND_PACKAGE_SHLIBDEPS ON)
-set(CPACK_COMPONENT_COMMAND_DESCRIPTION "weighs the evidence that papers print
- Steelyard reads what publications report (a t value, group sizes, means and
- SDs, a confidence interval, a p value, or just \"n.s.\") and says how strongly
- the printed evidence, taken together, speaks for an effect, for no effect, or
- for an effect that varies from study to study; how large the effect is; and
- whether the printed numbers agree with each other.")
+set(CPACK_PACKAGE_DESCRIPTION_SUMMARY "weighs the evidence that papers print")
+set(CPACK_COMPONENT_COMMAND_DESCRIPTION "Steelyard reads what publications report (a t value, group sizes, means and
+SDs, a confidence interval, a p value) and says how strongly the printed
+evidence, taken together, speaks for an effect, for no effect, or for an
+effect that varies from study to study, how large the effect is, and whether
+the printed numbers agree with each other.")
 
 set(CPACK_DEBIAN_DEVELOPMENT_PACKAGE_NAME libsteelyard-dev)
 set(CPACK_DEBIAN_DEVELOPMENT_PACKAGE_SECTION libdevel)
 set(CPACK_DEBIAN_DEVELOPMENT_PACKAGE_DEPENDS "libfmt-dev")
-set(CPACK_COMPONENT_DEVELOPMENT_DESCRIPTION "weighs the evidence that papers print (library)
- Steelyard rebuilds test statistics from what publications report and pools
- their evidence with the exact likelihood. This package holds the headers, the
- static library and the package files for CMake and pkg-config.")
+set(CPACK_COMPONENT_DEVELOPMENT_DESCRIPTION "Steelyard rebuilds test statistics from what publications report and pools
+their evidence with the exact likelihood. This package holds the headers, the
+static library and the package files for CMake and pkg-config.")
 
 # What Debian's policy asks of every package: copyright and changelog.
 configure_file("${steelyard_package_files}/copyright.in" "${PROJECT_BINARY_DIR}/package/copyright" @ONLY)

@@ -44,7 +44,7 @@ std::span<const JsonDocument> json_documents() { return documents; }
 std::string json_schema(std::string_view document) {
   const Described* one = find(document);
   if (one == nullptr) return "";
-  const std::string id = fmt::format("steelyard/{}-{}.schema.json", document, json_schema_version);
+  const std::string id = fmt::format("urn:steelyard:schema:{}:{}", document, json_schema_version);
   return one->shape == nullptr ? json::studies_schema(one->document.title, id)
                                : json::schema(one->shape(), one->document.title, id);
 }

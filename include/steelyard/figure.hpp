@@ -226,8 +226,8 @@ struct PriorGrid {
   double scale_used = 0.0;
 };
 
-/// The answers and the grid of a stress analysis, for the figures above. `studies` and `priors` are those it was
-/// made from; the grid's factors become widths and scales in the units of the priors.
+/// The answers and the grid of a stress analysis, for the figures above. `studies` and `priors` are those it
+/// was made from; the grid's factors become widths and scales in the units of the priors.
 [[nodiscard]] std::vector<Answer> arrivals(const StressResult& stress, std::span<const Study> studies);
 [[nodiscard]] std::vector<Answer> removals(const StressResult& stress, std::span<const Study> studies);
 [[nodiscard]] std::optional<PriorGrid> prior_grid(const StressResult& stress, const Priors& priors);

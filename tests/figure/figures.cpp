@@ -65,7 +65,7 @@ TEST_CASE("the funnel's region holds 95% by the noncentral t itself", "[funnel]"
   const Analysis analysis = made_up::analysis(30);
   const auto funnel = figure::funnel(analysis);
   REQUIRE(funnel.ok());
-  for (const std::size_t i : {10, 40, 80}) {
+  for (const std::size_t i : {10U, 40U, 80U}) {
     const double se = funnel.value->same_low[i].y, n = 1 / (se * se), df = 4 * n - 2;
     const double ncp = funnel.value->centre * std::sqrt(n);
     const double low = funnel.value->same_low[i].x * std::sqrt(n),

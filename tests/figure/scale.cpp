@@ -10,7 +10,7 @@ TEST_CASE("ticks are round, inside the scale and few enough", "[scale]") {
   for (const double width : {1e-6, 0.0037, 0.9, 1.0, 7.3, 1234.5, 8e9}) {
     for (const double low : {-0.37 * width, 0.0, 1.7 * width}) {
       const Scale scale{low, low + width, false, ""};
-      for (const std::size_t most : {2, 3, 5, 9}) {
+      for (const std::size_t most : {2U, 3U, 5U, 9U}) {
         const auto out = ticks(scale, most);
         INFO("width " << width << " low " << low << " most " << most);
         REQUIRE(out.size() <= most);

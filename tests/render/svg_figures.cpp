@@ -35,7 +35,7 @@ void check_all(const Analysis& analysis, const SvgStyle& style) {
 TEST_CASE("figures of any size keep their labels apart and inside", "[svg][figures]") {
   for (const FigureWidth width : {FigureWidth::one_column, FigureWidth::two_columns}) {
     const SvgStyle style{width, false, "f"};
-    for (const std::size_t count : {1, 2, 12, 60, 400}) {
+    for (const std::size_t count : {1U, 2U, 12U, 60U, 400U}) {
       INFO(count << " studies, " << (width == FigureWidth::one_column ? "narrow" : "wide"));
       check_all(made_up::analysis(count), style);
     }
@@ -43,7 +43,7 @@ TEST_CASE("figures of any size keep their labels apart and inside", "[svg][figur
       check_all(made_up::analysis(12, 0.4, 1.0, label), style);
     check_all(made_up::analysis(12, 1.0, 1e-3), style);
     check_all(made_up::analysis(12, 1.0, 1e3), style);
-    for (const std::size_t side : {2, 5, 12, 40})
+    for (const std::size_t side : {2U, 5U, 12U, 40U})
       check(render_svg(*figure::prior_map(made_up::grid(side, side)).value, style));
   }
 }

@@ -27,7 +27,7 @@ void check(const std::string& svg) {
 
 TEST_CASE("forests of any size keep their labels apart and inside", "[svg][forest]") {
   for (const FigureWidth width : {FigureWidth::one_column, FigureWidth::two_columns}) {
-    for (const std::size_t count : {1, 2, 3, 12, 60, 400}) {
+    for (const std::size_t count : {1U, 2U, 3U, 12U, 60U, 400U}) {
       INFO(count << " studies");
       check(render_svg(figure::forest(made_up::analysis(count)), {width, false, "f"}));
     }

@@ -23,8 +23,8 @@ std::size_t widest_line(const std::string& text) {
 }  // namespace
 
 TEST_CASE("text fits the terminal", "[text]") {
-  for (const std::size_t width : {60, 80, 100, 140, 250}) {
-    for (const std::size_t count : {1, 2, 12, 300}) {
+  for (const std::size_t width : {60U, 80U, 100U, 140U, 250U}) {
+    for (const std::size_t count : {1U, 2U, 12U, 300U}) {
       for (const bool utf8 : {true, false}) {
         INFO(width << " columns, " << count << " studies");
         CHECK(widest_line(render_text(made_up::analysis(count), {width, utf8, false})) <= width);

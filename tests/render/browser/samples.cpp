@@ -51,18 +51,18 @@ int main(int count, char** arguments) {
   }
   const Folder folder{arguments[1]};
   for (const FigureWidth width : {FigureWidth::one_column, FigureWidth::two_columns}) {
-    for (const std::size_t studies : {2, 12, 60, 400})
+    for (const std::size_t studies : {2U, 12U, 60U, 400U})
       figures(folder, std::to_string(studies), made_up::analysis(studies), width);
     figures(folder, "hostile", made_up::analysis(12, 0.4, 1.0, hostile), width);
     figures(folder, "wide", made_up::analysis(12, 0.4, 1.0, std::string(120, 'W')), width);
     figures(folder, "tiny", made_up::analysis(12, 1.0, 1e-3), width);
     figures(folder, "huge", made_up::analysis(12, 1.0, 1e3), width);
     const std::string end = width == FigureWidth::one_column ? "-narrow.svg" : ".svg";
-    for (const std::size_t side : {2, 7, 20})
+    for (const std::size_t side : {2U, 7U, 20U})
       folder.put("priors-" + std::to_string(side) + end,
                  render_svg(*figure::prior_map(made_up::grid(side, side)).value, {width, false, "sample"}));
   }
-  for (const std::size_t studies : {1, 12, 60})
+  for (const std::size_t studies : {1U, 12U, 60U})
     folder.put("report-" + std::to_string(studies) + ".html",
                render_html(report(made_up::analysis(studies))));
   folder.put("report-hostile.html", render_html(report(made_up::analysis(12, 0.4, 1.0, hostile))));

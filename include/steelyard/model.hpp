@@ -16,10 +16,18 @@ namespace steelyard {
 
 // ---- priors of the mean effect ------------------------------------------------------------------
 
-struct CauchyPrior { double location = 0.0, scale = 1.0; };            ///< scale > 0
-struct NormalPrior { double mean = 0.0, sd = 1.0; };                   ///< sd > 0
-struct StudentTPrior { double location = 0.0, scale = 1.0, df = 1.0; };///< scale > 0, df > 0
-struct UniformPrior { double low = -1.0, high = 1.0; };                ///< low < high
+struct CauchyPrior {
+  double location = 0.0, scale = 1.0;
+};  ///< scale > 0
+struct NormalPrior {
+  double mean = 0.0, sd = 1.0;
+};  ///< sd > 0
+struct StudentTPrior {
+  double location = 0.0, scale = 1.0, df = 1.0;
+};  ///< scale > 0, df > 0
+struct UniformPrior {
+  double low = -1.0, high = 1.0;
+};  ///< low < high
 /// Density 1 everywhere. Improper: only ratios of marginal likelihoods under it mean anything.
 /// Not in the grammar; used where a published definition starts from it.
 struct FlatPrior {};
@@ -36,13 +44,27 @@ struct EffectPrior {
 
 // ---- priors of the spread τ (not τ²) -------------------------------------------------------------
 
-struct HalfCauchyPrior { double scale = 1.0; };
-struct HalfNormalPrior { double scale = 1.0; };
-struct HalfStudentTPrior { double scale = 1.0, df = 1.0; };
-struct InverseGammaPrior { double shape = 1.0, scale = 0.15; };
-struct LogNormalPrior { double log_mean = 0.0, log_sd = 1.0; };
-struct ExponentialPrior { double mean = 1.0; };
-struct UniformSpreadPrior { double low = 0.0, high = 1.0; };           ///< 0 ≤ low < high
+struct HalfCauchyPrior {
+  double scale = 1.0;
+};
+struct HalfNormalPrior {
+  double scale = 1.0;
+};
+struct HalfStudentTPrior {
+  double scale = 1.0, df = 1.0;
+};
+struct InverseGammaPrior {
+  double shape = 1.0, scale = 0.15;
+};
+struct LogNormalPrior {
+  double log_mean = 0.0, log_sd = 1.0;
+};
+struct ExponentialPrior {
+  double mean = 1.0;
+};
+struct UniformSpreadPrior {
+  double low = 0.0, high = 1.0;
+};  ///< 0 ≤ low < high
 
 using SpreadFamily = std::variant<HalfCauchyPrior, HalfNormalPrior, HalfStudentTPrior, InverseGammaPrior,
                                   LogNormalPrior, ExponentialPrior, UniformSpreadPrior>;
@@ -65,11 +87,11 @@ struct SpreadPrior {
 
 /// Where the density lives and where a quadrature rule should look closely.
 struct PriorShape {
-  double low = -std::numeric_limits<double>::infinity();   ///< support
+  double low = -std::numeric_limits<double>::infinity();  ///< support
   double high = std::numeric_limits<double>::infinity();
-  double center = 0.0;           ///< the mode; where a cut has removed it, the edge that is left
-  double scale = 1.0;            ///< its width; at an edge, the length over which the density falls by e
-  double log_peak = 0.0;         ///< largest log density inside the support
+  double center = 0.0;    ///< the mode; where a cut has removed it, the edge that is left
+  double scale = 1.0;     ///< its width; at an edge, the length over which the density falls by e
+  double log_peak = 0.0;  ///< largest log density inside the support
 };
 [[nodiscard]] PriorShape shape(const EffectPrior& prior);
 [[nodiscard]] PriorShape shape(const SpreadPrior& prior);
@@ -95,10 +117,10 @@ struct PriorShape {
 
 /// A prior from the literature that can be used by name.
 struct PublishedPrior {
-  std::string_view name;       ///< kebab-case
-  std::string_view definition; ///< in the grammar
-  std::string_view where;      ///< what it was made for
-  std::string_view source;     ///< reference
+  std::string_view name;        ///< kebab-case
+  std::string_view definition;  ///< in the grammar
+  std::string_view where;       ///< what it was made for
+  std::string_view source;      ///< reference
 };
 [[nodiscard]] std::span<const PublishedPrior> published_effect_priors();
 [[nodiscard]] std::span<const PublishedPrior> published_spread_priors();

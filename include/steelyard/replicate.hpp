@@ -14,8 +14,8 @@
 namespace steelyard {
 
 struct ReplicateOptions {
-  double level = 0.95;  ///< of intervals, 0 < level < 1
-  double alpha = 0.05;  ///< two-sided level at which originals are read as selected, 0 < alpha < 1
+  double level = 0.95;       ///< of intervals, 0 < level < 1
+  double alpha = 0.05;       ///< two-sided level at which originals are read as selected, 0 < alpha < 1
   std::size_t weights = 11;  ///< steps of the original's weight from 0 to 1, ≥ 2
 };
 
@@ -32,11 +32,11 @@ struct Prediction {
   std::size_t study = 0;  ///< index into the studies given
   /// Central predictive interval of the replication's t (or z = estimate/se), and of its effect.
   std::optional<Interval> statistic, effect;
-  std::optional<double> below;        ///< predictive P(T ≤ the observed t)
+  std::optional<double> below;  ///< predictive P(T ≤ the observed t)
   std::optional<bool> inside;
-  std::optional<double> band;         ///< a replication known as a band: predictive P(T in the band)
-  double error = 0.0;                 ///< absolute, of the probabilities
-  std::string reason;                 ///< why something is absent
+  std::optional<double> band;  ///< a replication known as a band: predictive P(T in the band)
+  double error = 0.0;          ///< absolute, of the probabilities
+  std::string reason;          ///< why something is absent
 };
 
 /// The answer when the originals count with this weight (a power of their likelihood).
@@ -59,9 +59,10 @@ struct ReplicateResult {
   EvidenceTriple selected_all, selected_carried;
   Summary effect_originals, effect_replications, effect_all;  ///< pooled, averaged
   Summary effect_selected;  ///< from the originals read as selected alone (same effect)
-  std::optional<double> shrinkage;  ///< pooled mean of all ÷ of the originals (of medians where means don't exist)
-  std::vector<Prediction> predictions;   ///< one a replication
-  std::vector<Discounted> discounted;    ///< weights rising from 0 to 1
+  std::optional<double>
+      shrinkage;  ///< pooled mean of all ÷ of the originals (of medians where means don't exist)
+  std::vector<Prediction> predictions;  ///< one a replication
+  std::vector<Discounted> discounted;   ///< weights rising from 0 to 1
   std::vector<Diagnostic> cautions;
   bool accurate = true;
 };

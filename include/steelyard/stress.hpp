@@ -24,12 +24,13 @@ struct StressOptions {
   std::vector<double> widths, scales;
   /// A label of each study (parallel to the studies) for subsets; empty: none.
   std::vector<std::string> groups;
-  bool grid = true;          ///< priors over the two-way grid
-  bool shares = true;        ///< the evidence each study carries
+  bool grid = true;                ///< priors over the two-way grid
+  bool shares = true;              ///< the evidence each study carries
   std::size_t exact_shares = 12;   ///< up to that many studies over all orders; at most 16
   std::size_t most_shares = 1000;  ///< beyond that many studies no shares
-  unsigned threads = 1;      ///< ≥ 1; the result is the same for any number
-  /// Called with (steps done, steps in all) now and then, from one thread at a time; false stops. May be empty.
+  unsigned threads = 1;            ///< ≥ 1; the result is the same for any number
+  /// Called with (steps done, steps in all) now and then, from one thread at a time; false stops. May be
+  /// empty.
   std::function<bool(std::size_t, std::size_t)> progress;
 };
 
@@ -42,7 +43,7 @@ struct Answer {
   std::optional<LogBayesFactor> effect, effect_fixed, effect_random, heterogeneity;
   Summary pooled_effect;  ///< averaged; empty where only the evidence was asked for
   bool accurate = true;
-  std::string refused;    ///< why there is no answer (for instance no mass in the direction), or ""
+  std::string refused;  ///< why there is no answer (for instance no mass in the direction), or ""
 };
 
 struct SubsetAnswer {
@@ -86,26 +87,26 @@ struct Firmness {
   Change kind = Change::study;  ///< width: the whole two-way grid
   std::size_t count = 0;        ///< changes made
   double lowest = 0.0, highest = 0.0;
-  bool same_stand = true;       ///< the verdict never turns
+  bool same_stand = true;  ///< the verdict never turns
 };
 
 struct StressResult {
   Answer base;
   Stand stand = Stand::undecided;
-  std::vector<Answer> without;            ///< leave one out, by study; empty for a single study
-  std::vector<std::size_t> order;         ///< studies as they arrive: by year when all have one, else by row
+  std::vector<Answer> without;     ///< leave one out, by study; empty for a single study
+  std::vector<std::size_t> order;  ///< studies as they arrive: by year when all have one, else by row
   bool by_year = false;
-  std::vector<Answer> cumulative;         ///< after the first, the first two, ...
-  std::vector<SubsetAnswer> subsets;      ///< groups in the order of their first study
-  std::array<Answer, 3> directions;       ///< either, greater, less
+  std::vector<Answer> cumulative;     ///< after the first, the first two, ...
+  std::vector<SubsetAnswer> subsets;  ///< groups in the order of their first study
+  std::array<Answer, 3> directions;   ///< either, greater, less
   std::optional<PriorGrid> grid;
-  std::vector<Share> shares;              ///< by study; empty when not asked for
-  bool shares_exact = true;               ///< over all orders
-  std::size_t shares_orders = 0;          ///< orders taken when not
-  std::vector<Turn> turns;                ///< of each kind at most one, studies first; none: nothing turned it
-  std::vector<Firmness> firmness;         ///< of each kind that was tried
+  std::vector<Share> shares;       ///< by study; empty when not asked for
+  bool shares_exact = true;        ///< over all orders
+  std::size_t shares_orders = 0;   ///< orders taken when not
+  std::vector<Turn> turns;         ///< of each kind at most one, studies first; none: nothing turned it
+  std::vector<Firmness> firmness;  ///< of each kind that was tried
   bool accurate = true;
-  bool stopped = false;                   ///< `progress` asked to stop; what is there is incomplete
+  bool stopped = false;  ///< `progress` asked to stop; what is there is incomplete
 };
 
 /// Error when pooling as it stands is refused, or an option is out of range. Pure.

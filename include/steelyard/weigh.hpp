@@ -37,7 +37,8 @@ struct RegionResult {
   /// effect models (Morey & Rouder 2011). Absent, with `reason`, when the prior or the posterior leaves
   /// less than 1e-6 on a side: then `negligible_limit` bounds it on that side.
   std::optional<LogBayesFactor> negligible;
-  std::optional<double> negligible_limit;  ///< log Bayes factor is beyond this (above when > 0, below when < 0)
+  std::optional<double>
+      negligible_limit;  ///< log Bayes factor is beyond this (above when > 0, below when < 0)
   std::string reason;
   double prior_inside = 0.0;  ///< prior mass of the region
   RegionMass mean_effect, new_study;
@@ -51,7 +52,8 @@ struct RegionResult {
 
 /// `result` must come with its posterior (summaries). Error when it has none, or the region is empty.
 [[nodiscard]] Outcome<RegionResult> weigh_region(const PoolResult& result, const Priors& priors,
-                                                 std::span<const Study> studies, const RegionOptions& options);
+                                                 std::span<const Study> studies,
+                                                 const RegionOptions& options);
 
 // ---- each study alone -----------------------------------------------------------------------------
 
@@ -83,21 +85,21 @@ struct Weighing {
   LogBayesFactor bf;      ///< the effect prior, cut to its direction, against no effect
   /// The same prior family uncut, and cut to either side; absent where the cut leaves no mass.
   std::optional<LogBayesFactor> either, greater, less;
-  Summary effect;                        ///< posterior under the effect prior
-  std::optional<LogRange> rounding;      ///< of bf.log_bf over what the printed digits allow
+  Summary effect;                    ///< posterior under the effect prior
+  std::optional<LogRange> rounding;  ///< of bf.log_bf over what the printed digits allow
   std::optional<LogBayesFactor> sceptic, enthusiast;
-  std::string enthusiast_side;           ///< "greater" or "less": what the enthusiast expects
+  std::string enthusiast_side;  ///< "greater" or "less": what the enthusiast expects
   /// The factor on the prior's width at which the Bayes factor passes 1 and how wide the prior then is
   /// (its scale, sd, or half width); absent when it never does between 1/1000 and 10,000.
   std::optional<double> turning_factor;
   std::optional<double> turning_width;
-  LikelihoodBound bound;                 ///< Edwards, Lindman & Savage (1963)
-  std::optional<double> p;               ///< two-sided p of an exact t or an estimate
-  std::optional<double> log_p_bound;     ///< log of 1/(−e·p·log p), for p < 1/e (Sellke et al. 2001)
+  LikelihoodBound bound;              ///< Edwards, Lindman & Savage (1963)
+  std::optional<double> p;            ///< two-sided p of an exact t or an estimate
+  std::optional<double> log_p_bound;  ///< log of 1/(−e·p·log p), for p < 1/e (Sellke et al. 2001)
   /// P(a random member of group 1 beats one of group 2) = Φ(δ/√2); one sample: P(a score is above the
   /// comparison value) = Φ(δ). Only for `smd`.
   std::optional<Translated> superiority;
-  std::optional<Translated> raw;         ///< effect × SD in raw units, where an SD is known
+  std::optional<Translated> raw;  ///< effect × SD in raw units, where an SD is known
   std::optional<RegionResult> region;
   std::vector<Diagnostic> cautions;
 };
@@ -106,10 +108,10 @@ struct Weighing {
 struct WeighSpread {
   std::size_t count = 0;
   double least = 0.0, lower_quartile = 0.0, median = 0.0, upper_quartile = 0.0, most = 0.0;
-  std::size_t for_effect = 0;         ///< rows above 0
-  std::size_t for_none = 0;           ///< rows below 0
-  std::size_t clearly_for_effect = 0; ///< +10 decibans (10 to 1) or more
-  std::size_t clearly_for_none = 0;   ///< −10 decibans or less
+  std::size_t for_effect = 0;          ///< rows above 0
+  std::size_t for_none = 0;            ///< rows below 0
+  std::size_t clearly_for_effect = 0;  ///< +10 decibans (10 to 1) or more
+  std::size_t clearly_for_none = 0;    ///< −10 decibans or less
 };
 
 struct WeighResult {

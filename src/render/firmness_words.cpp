@@ -164,7 +164,7 @@ std::string_view kind_text(Change kind) {
     case Change::scale:
       return "Every pair of priors tried";
     case Change::direction:
-      return "Every direction";
+      return "The answer for one direction, or for either,";
     case Change::model:
       return "The same-effect and the varying-effects answer, each alone,";
     case Change::group:
@@ -179,13 +179,11 @@ std::string turn_sentence(const StressAnalysis& a, const Turn& turn) {
   switch (turn.kind) {
     case Change::study:
       return fmt::format("Without \"{}\" {}.", a.rows.studies[turn.index].label, moved(a, turn));
-    case Change::order: {
-      const Study& last = a.rows.studies[a.result.order[turn.index - 1]];
-      return fmt::format(
-          "The verdict is young: after {} (up to \"{}\") the evidence was {}.",
-          turn.index == 1 ? "the first study" : fmt::format("the first {} studies", turn.index), last.label,
-          side_text(turn.to, direction_of(a.rows)));
-    }
+    case Change::order:
+      return fmt::format("It has stood since study {} of {} (\"{}\"); before that one the evidence was {}.",
+                         turn.index + 1, a.result.order.size(),
+                         a.rows.studies[a.result.order[turn.index]].label,
+                         side_text(turn.to, direction_of(a.rows)));
     case Change::width:
       return factor_clause(a, turn, "wide", "narrow", "an effect prior");
     case Change::scale:
@@ -240,14 +238,15 @@ std::string stress_verdict(const StressAnalysis& a) {
           ? fmt::format("As it stands the evidence is {}: short of {} either way, so undecided.",
                         side_text(r.base.effect->log_bf, d), with_limit(a))
           : fmt::format("As it stands the evidence is {}.", side_text(r.base.effect->log_bf, d));
-  if (r.turns.empty()) {
+  const bool only_order = !r.turns.empty() && r.turns.front().kind == Change::order;
+  if (r.turns.empty() || only_order) {
     return as_it_stands +
-           " Nothing that was tried turns that: no study left out, no order, prior, direction or "
-           "kind of model.";
+           " Nothing that was tried turns that: no study left out, no prior, direction or kind of model." +
+           (only_order ? " " + turn_sentence(a, r.turns.front()) : "");
   }
   const bool from_study = r.turns.front().kind == Change::study;
   return fmt::format("{} {} {}", as_it_stands,
-                     from_study ? "One study can turn it:" : "No single study turns it, but this does:",
+                     from_study ? "One study can turn it." : "No single study turns it.",
                      turn_sentence(a, r.turns.front()));
 }
 

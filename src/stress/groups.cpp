@@ -66,7 +66,7 @@ class Comparison {
  public:
   Comparison(std::span<const Study> studies, const std::vector<std::vector<std::size_t>>& groups,
              const Priors& priors, const GroupOptions& options, int points)
-      : groups_(groups), shared_(options.shared_spread), priors_(priors) {
+      : groups_(groups), shared_(options.shared_spread) {
     for (const Study& study : studies) likelihoods_.push_back(likelihood(study));
     const EffectPrior deviation{options.deviation, Direction::either};
     // Deviations reach to where the prior of the mean may not: the axis of group means is open.
@@ -147,7 +147,6 @@ class Comparison {
 
   const std::vector<std::vector<std::size_t>>& groups_;
   bool shared_;
-  const Priors& priors_;
   std::vector<Likelihood> likelihoods_;
   Axis means_, spreads_;
   std::vector<double> matrix_, log_prior_;

@@ -84,12 +84,20 @@ void judge_models(StressResult& result, double verdict) {
   judge(result, Change::model, {{0, true, &answers[0]}, {1, true, &answers[1]}}, verdict);
 }
 
+// From either direction to the one that the data favour (the other is bound to speak against), or from one
+// direction to either.
 void judge_directions(StressResult& result, Direction own, double verdict) {
-  std::vector<Candidate> all;
-  for (std::size_t i = 0; i < result.directions.size(); ++i) {
-    if (i != static_cast<std::size_t>(own)) all.push_back({i, true, &result.directions[i]});
+  const auto at = [&result](Direction d) -> const Answer& {
+    return result.directions[static_cast<std::size_t>(d)];
+  };
+  Direction other = Direction::either;
+  if (own == Direction::either) {
+    const auto& greater = at(Direction::greater).effect;
+    const auto& less = at(Direction::less).effect;
+    const bool up = greater && (!less || greater->log_bf >= less->log_bf);
+    other = up ? Direction::greater : Direction::less;
   }
-  judge(result, Change::direction, all, verdict);
+  judge(result, Change::direction, {{static_cast<std::size_t>(other), true, &at(other)}}, verdict);
 }
 
 void judge_subsets(StressResult& result, double verdict) {
@@ -176,12 +184,12 @@ void find_turns(StressResult& result, std::span<const Study> studies, const Prio
                 const StressOptions& options) {
   if (!result.base.effect) return;
   judge(result, Change::study, numbered(result.without), options.verdict);
-  judge_order(result, options.verdict);
   judge_factors(result, studies, priors, options);
   judge_grid(result, options.verdict);
   judge_directions(result, priors.effect.direction, options.verdict);
   judge_models(result, options.verdict);
   judge_subsets(result, options.verdict);
+  judge_order(result, options.verdict);
 }
 
 }  // namespace steelyard::stressing

@@ -157,6 +157,7 @@ std::string grid(const StressAnalysis& a, const TextStyle& style) {
 
 std::string firmness(const StressAnalysis& a, const TextStyle& style) {
   std::string out;
+  // The first is in the verdict.
   for (std::size_t i = 1; i < a.result.turns.size(); ++i) {
     out += paragraph(turn_sentence(a, a.result.turns[i]), style, 2, 2);
   }

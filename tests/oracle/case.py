@@ -49,15 +49,26 @@ def at_zero(studies):
 
 def marginal_lines(studies, effect, spread, second=True, floor=5e-11):
     """The four log marginal likelihoods; `second` computes them again at other nodes for the error."""
-    first = Analysis(studies, effect, spread).log_marginals()
+    found = Analysis(studies, effect, spread).marginals()
+    first = [value for value, _, _ in found]
     other = Analysis(studies, effect, spread, 1).log_marginals() if second else first
     if any(isinstance(s, Band) for s in studies):
-        first[0] = other[0] = at_zero(studies)
+        found[0] = (at_zero(studies), None, None)
+        first = [found[0][0], *first[1:]]
+        other = [found[0][0], *other[1:]]
     lines = []
-    for model, value, again in zip(MODELS, first, other):
+    for model, value, again, (_, mean, width) in zip(MODELS, first, other, found):
+        if mean is not None and not trusted(studies, mean, width):
+            continue
         error = max(abs(float(value - again)), 3e-19 * size(studies, value), floor if not second else 1e-15)
         lines.append(["marginal", model, full(value), f"{error:.1e}"])
     return lines
+
+
+def trusted(studies, mean, spread):
+    """Whether bands keep their digits there: likelihood.py computes them without logarithms, which serves
+    down to about e^-300. Such a model is left out of the table."""
+    return all(log_likelihood([s], [mean], [spread])[0] > -250 for s in studies if isinstance(s, Band))
 
 
 def size(studies, value):

@@ -231,6 +231,12 @@ class Cubature:
             second[~across_x, 2] = middle_v[~across_x]
         return np.concatenate([first, second])
 
+    def largest(self):
+        """The node where the integrand is largest."""
+        best = np.unravel_index(int(np.argmax(self.logs)), self.logs.shape)
+        x, v = self.nodes(self.boxes[best[0] : best[0] + 1])
+        return x[(0,) + best[1:]], None if v is None else v[(0,) + best[1:]]
+
     def masses(self):
         with np.errstate(under="ignore"):
             f = np.exp(self.logs - self.top)
@@ -458,10 +464,19 @@ class Analysis:
             keep |= touch
         return boxes[keep]
 
-    def log_marginals(self):
-        """fixed_null, fixed_effect, random_null, random_effect; the last two absent for one study."""
-        fixed_null = log_likelihood(self.studies, np.zeros(1, dtype=LD), LD(0))[0]
-        result = [fixed_null, self.fixed().log_total]
+    def marginals(self):
+        """fixed_null, fixed_effect, random_null, random_effect (the last two absent for one study), each as
+        (log value, mean, spread) with the place where its integrand is largest."""
+        zero = np.zeros(1, dtype=LD)
+        result = [(log_likelihood(self.studies, zero, LD(0))[0], LD(0), LD(0))]
+        fixed = self.fixed()
+        result.append((fixed.log_total, self.to_mean(fixed.largest()[0]), LD(0)))
         if len(self.studies) > 1:
-            result += [self.null().log_total, self.random().log_total]
+            null, random = self.null(), self.random()
+            result.append((null.log_total, LD(0), np.exp(null.largest()[0])))
+            x, v = random.largest()
+            result.append((random.log_total, self.to_mean(x), np.exp(v)))
         return result
+
+    def log_marginals(self):
+        return [value for value, _, _ in self.marginals()]

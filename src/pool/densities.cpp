@@ -112,7 +112,7 @@ numeric::DensityCurve through_logarithm(const numeric::BlockFunction& density, c
   space.low = where.low;
   space.high = where.high;
   space.start = where.look;
-  space.drop = 19.0;  // what is left out holds less than 1e-8
+  space.drop = 22.0;  // what is left out holds less than 1e-9
   space.log_integrand = log_density;
   const Window window = find_window(space);
   std::vector<double> wanted;
@@ -121,7 +121,7 @@ numeric::DensityCurve through_logarithm(const numeric::BlockFunction& density, c
     wanted.push_back(window.best + offset * window.width);
   }
   numeric::LogCurve::Need need;
-  need.tolerance = 1e-8;
+  need.tolerance = 3e-9;
   need.noise = 1e-11;
   need.loosest = 1e-2;
   need.log_peak = window.log_best;

@@ -19,10 +19,6 @@ void add_comb(std::vector<double>& points, double centre, double width) {
   for (const double offset : comb) points.push_back(centre + offset * width);
 }
 
-/// Distances from the prior's centre, in its scale, at which quadrature panels must end when the prior is
-/// narrower than the window.
-constexpr double prior_marks[] = {0.5, 2.0, 8.0, 32.0, 128.0, 1024.0, 16384.0};
-
 /// The ends of the quadrature panels: the curve's panels, the peak and its flanks, the prior's shape.
 std::vector<double> quadrature_breaks(const Row& row, const PriorShape& shape) {
   std::vector<double> edges;
@@ -33,8 +29,9 @@ std::vector<double> quadrature_breaks(const Row& row, const PriorShape& shape) {
   const double length = row.window.high - row.window.low;
   if (std::isfinite(shape.scale) && shape.scale * 4.0 < length) {
     wanted.push_back(shape.center);
-    for (const double offset : prior_marks) {
-      if (offset * shape.scale > length) break;
+    // Geometric all the way: a panel that spans many powers of ten would see nothing of an algebraic tail.
+    constexpr double ratio = 6.0;
+    for (double offset = 0.5; offset * shape.scale < length; offset *= ratio) {
       wanted.push_back(shape.center + offset * shape.scale);
       wanted.push_back(shape.center - offset * shape.scale);
     }
@@ -133,7 +130,7 @@ Row make_row(const Field& field, const PriorBlock& prior, double spread, const s
         breaks.push_back(x);
   std::sort(breaks.begin(), breaks.end());
   numeric::LogCurve::Need need;
-  need.tolerance = 1e-12;
+  need.tolerance = 1e-11;
   need.noise = noise;
   need.log_peak = window.log_best;
   need.weight = &weight;

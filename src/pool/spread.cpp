@@ -101,8 +101,8 @@ SpreadIntegral integrate_spread(const SpreadProblem& problem) {
       values[j] = log_density(problem.prior, problem.axis.spread(u[j])) + problem.axis.log_slope(u[j]);
   };
   numeric::LogCurve::Need need;
-  need.tolerance = 3e-10;
-  need.noise = std::max(problem.noise, 4e-12);
+  need.tolerance = 5e-10;
+  need.noise = std::max(problem.noise, 4e-11);
   need.log_peak = window.log_best;
   need.weight = &weight;
   need.most_panels = 60;

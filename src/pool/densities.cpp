@@ -112,7 +112,7 @@ numeric::DensityCurve through_logarithm(const numeric::BlockFunction& density, c
   space.low = where.low;
   space.high = where.high;
   space.start = where.look;
-  space.drop = 22.0;  // what is left out holds less than 1e-9
+  space.drop = 26.0;  // what is left out holds less than 1e-10
   space.log_integrand = log_density;
   const Window window = find_window(space);
   std::vector<double> wanted;
@@ -121,7 +121,7 @@ numeric::DensityCurve through_logarithm(const numeric::BlockFunction& density, c
     wanted.push_back(window.best + offset * window.width);
   }
   numeric::LogCurve::Need need;
-  need.tolerance = 3e-9;
+  need.tolerance = 3e-10;
   need.noise = 1e-11;
   need.loosest = 1e-2;
   need.log_peak = window.log_best;
@@ -137,7 +137,15 @@ numeric::DensityCurve through_logarithm(const numeric::BlockFunction& density, c
   edges.push_back(curve.high());
   std::vector<double> marks;
   add_flanks(marks, window.best, window.width, window.low, window.high);
-  return {smooth, merge_marks(edges, marks, 0.1 * window.width), 1e-9};
+  numeric::DensityCurve out(smooth, merge_marks(edges, marks, 0.1 * window.width), 1e-9);
+  // A logarithm that falls off a cliff can't be interpolated: the curve then overshoots beyond what the peak
+  // allows, and the density itself serves.
+  if (out.total() < std::exp(window.log_best + 0.5) * (window.high - window.low)) return out;
+  const numeric::BlockFunction plain = [&density](std::span<const double> x, std::span<double> values) {
+    density(x, values);
+    for (double& value : values) value = std::max(value, 0.0);
+  };
+  return {plain, merge_marks({window.low, window.high}, marks, 0.1 * window.width), 1e-9};
 }
 
 numeric::DensityCurve spread_density(const RandomMarginal& random, const SpreadPrior& prior) {

